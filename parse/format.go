@@ -264,9 +264,7 @@ func pieces(s *Statement) (head string, list []piece, isList bool) {
 		for _, w := range s.Small.Names {
 			list = append(list, word(w))
 		}
-		if o := s.Small.Order; o != nil {
-			list[len(list)-1].text += " to order " + o.Text
-		}
+		list[len(list)-1].text += " to order " + s.Small.Order.Text
 		return head, list, true
 	case s.Numbers != nil:
 		for _, e := range s.Numbers {

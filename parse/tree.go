@@ -126,7 +126,7 @@ type KeepClause struct {
 // SmallClause lists parameters that series are truncated in.
 type SmallClause struct {
 	Names []*Word `parser:"@@ ( ',' @@ )*"`
-	Order *Whole  `parser:"( 'to' 'order' @@ )?"`
+	Order *Whole  `parser:"'to' 'order' @@"`
 }
 
 // Whole is a number where no expression may stand.

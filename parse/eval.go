@@ -1,0 +1,624 @@
+package parse
+
+import (
+	"fmt"
+	"math/big"
+
+	"remnant/expr/field"
+	"remnant/parse/diag"
+)
+
+// The value of an expression: a form. Everything is exact; primes and commas act on whole
+// brackets by Leibniz' rule; what divides holds no perturbation, is not zero modulo the
+// relations, and is recorded where it could vanish.
+
+// Limits on what an expression may ask for.
+const (
+	maxOrder = 64     // of a derivative
+	maxBits  = 200000 // of a power's coefficients
+)
+
+// value evaluates an expression whose indices are all summed.
+func (e *elaborator) value(x Expr) form {
+	e.checkIndices(x)
+	return e.eval(x)
+}
+
+// background evaluates an expression that may hold no perturbation.
+func (e *elaborator) background(x Expr, what string) field.Elem {
+	f := e.value(x)
+	v, ok := f.elem()
+	if !ok {
+		at := x.Span()
+		for _, t := range f.terms {
+			if t.degree > 0 {
+				at = t.at
+				break
+			}
+		}
+		panic(newFault(diag.NotBackground, at, fmt.Sprintf("'%s' is a perturbation and cannot stand in %s", e.src.Slice(at), what), "constants and functions of time stand here"))
+	}
+	return v
+}
+
+func (e *elaborator) eval(x Expr) form {
+	switch n := x.(type) {
+	case *Number:
+		return background(e.k.Rat(n.Value), n.At)
+	case *Name:
+		return e.evalName(n)
+	case *Paren:
+		return e.eval(n.X)
+	case *Sign:
+		f := e.eval(n.X)
+		if n.Minus {
+			f = f.scale(e.k.Int(-1))
+		}
+		return f
+	case *Sum:
+		return e.evalSum(n)
+	case *Product:
+		return e.evalProduct(n)
+	case *Power:
+		return e.evalPower(n)
+	case *Factorial:
+		return e.evalFactorial(n)
+	case *Prime:
+		return e.evalPrime(n)
+	case *Deriv:
+		return e.evalDeriv(n)
+	case *Index:
+		panic(e.indexed(n))
+	case *Call:
+		return e.evalCall(n)
+	case *Apply:
+		return e.apply(n.Operator, e.eval(n.X))
+	}
+	panic("parse: unknown node in a tree")
+}
+
+func (e *elaborator) evalName(n *Name) form {
+	for _, f := range elementaryNames {
+		if n.Name == f {
+			panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' needs an argument", n.Text), "the form is: "+n.Text+"(x)"))
+		}
+	}
+	if _, ok := e.symbols[n.Name]; !ok && n.Name == "X" {
+		if phi, ok := e.symbols["phi"]; ok && phi.kind == symbolBackground {
+			e.lookup(&Name{n.node, n.Text, "phi"})
+			return background(e.kineticOf(phi.gen), n.At)
+		}
+	}
+	s := e.lookup(n)
+	switch s.kind {
+	case symbolConstant, symbolBackground:
+		return background(e.k.Gen(s.gen), n.At)
+	case symbolFunction:
+		return background(e.k.FuncJet(s.fn.Fn, make([]int, len(s.args))), n.At)
+	case symbolField:
+		return perturbation(e.k, s.index, n.At)
+	case symbolLet:
+		return e.letValue(s)
+	case symbolFormFactor:
+		panic(e.formFactor(n))
+	}
+	switch n.Name {
+	case "k":
+		return background(e.model.Wavenumber, n.At)
+	case "pi":
+		return background(e.constantPi(), n.At)
+	case "t":
+		return background(e.k.Gen(e.time()), n.At)
+	}
+	panic(newFault(diag.OperatorAlone, n.At, "'"+n.Text+"' has nothing to act on", "what an operator acts on follows in square brackets: box[zeta]"))
+}
+
+func (e *elaborator) formFactor(x Expr) *fault {
+	return newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("'%s' is a form factor, which is not yet supported", String(x)), "powers of box can be used: box^2[zeta]")
+}
+
+func (e *elaborator) indexed(n *Index) *fault {
+	if name, ok := n.X.(*Name); ok {
+		if s := e.symbols[name.Name]; s != nil && s.kind == symbolFormFactor {
+			return e.formFactor(n)
+		}
+		if _, ok := e.symbols[name.Name]; !ok {
+			return e.unknown(name)
+		}
+	}
+	return newFault(diag.NoMeaning, n.At, fmt.Sprintf("'%s' is no tensor: it takes no indices after a dot", String(n.X)), "a space derivative is written with a comma: zeta,i")
+}
+
+// letValue is what an abbreviation stands for. While relations are being added it is
+// computed afresh each time.
+func (e *elaborator) letValue(s *symbol) form {
+	if s.value != nil {
+		return *s.value
+	}
+	for _, o := range e.opening {
+		if o == s {
+			panic(newFault(diag.UsedBefore, s.at, fmt.Sprintf("'%s' stands in its own definition", s.name), "an abbreviation is made of names above it"))
+		}
+	}
+	src, anywhere := e.src, e.anywhere
+	e.src, e.anywhere = e.model.Source, false
+	e.opening = append(e.opening, s)
+	f := e.value(s.let.Value.X)
+	e.opening = e.opening[:len(e.opening)-1]
+	e.src, e.anywhere = src, anywhere
+	if e.related {
+		s.value = &f
+	}
+	return f
+}
+
+func (e *elaborator) evalSum(n *Sum) form {
+	var c collector
+	for _, t := range n.Terms {
+		f := e.eval(t.X)
+		if t.Minus {
+			f = f.scale(e.k.Int(-1))
+		}
+		c.addForm(f)
+	}
+	e.k.Budget().Check(len(c.terms))
+	return c.form()
+}
+
+func (e *elaborator) evalProduct(n *Product) form {
+	f := e.eval(n.Factors[0].X)
+	for _, o := range n.Factors[1:] {
+		if o.Over {
+			f = f.scale(e.divisor(o.X, "the model divides by it"))
+			continue
+		}
+		f = e.mul(f, e.eval(o.X), n.At)
+		e.k.Budget().Check(len(f.terms))
+	}
+	return f.placed(n.At)
+}
+
+func (e *elaborator) mul(f, g form, at diag.Span) form {
+	product, high := f.mul(g, at)
+	if high != nil {
+		panic(e.wrongOrder(high.degree, high.at))
+	}
+	return product
+}
+
+// divisor evaluates what is divided by and returns its inverse.
+func (e *elaborator) divisor(x Expr, why string) field.Elem {
+	v, ok := e.eval(x).elem()
+	if !ok {
+		panic(newFault(diag.DivideByField, x.Span(), fmt.Sprintf("'%s' holds a perturbation and cannot be divided by", String(x)), "a Lagrangian is divided by constants and functions of time only"))
+	}
+	return e.inverse(v, x, why)
+}
+
+func (e *elaborator) inverse(v field.Elem, x Expr, why string) field.Elem {
+	if v.IsZero() {
+		panic(newFault(diag.DivideByZero, x.Span(), fmt.Sprintf("'%s' is zero and cannot be divided by", String(x)), e.zeroHint(x)))
+	}
+	e.k.AssumeNonzero(v, why)
+	return v.Inv()
+}
+
+// zeroHint says by which relation x is zero, where there is one to name.
+func (e *elaborator) zeroHint(x Expr) string {
+	if g, ok := e.symbolGen(x); ok {
+		for _, r := range e.k.Rules() {
+			if r.Leader == g && len(r.Sources) > 0 {
+				return "it vanishes by the relation " + e.model.Relations[r.Sources[0]].Text
+			}
+		}
+	}
+	return "it vanishes by the background relations, or by itself"
+}
+
+// evalPower raises to a rational power; perturbations to a whole one.
+func (e *elaborator) evalPower(n *Power) form {
+	base := e.eval(n.Base)
+	r := e.exponent(n.Exponent)
+	v, isBackground := base.elem()
+	if !isBackground {
+		return e.powerOfForm(base, r, n)
+	}
+	e.limitPower(r.Num(), n)
+	p := int(r.Num().Int64())
+	if p < 0 {
+		e.inverse(v, n.Base, "the model divides by it")
+	}
+	if q := r.Denom(); !q.IsInt64() || q.Int64() > 2 {
+		panic(newFault(diag.NotYetSupported, n.Exponent.Span(), "roots other than square roots are not yet supported", "an exponent is a whole number or a half of one"))
+	} else if q.Int64() == 2 {
+		root, err := e.k.Sqrt(v)
+		if err != nil {
+			panic(domainFault(err, n.At))
+		}
+		v = root
+	}
+	e.limitSize(v, p, n)
+	return background(v.Pow(p), n.At)
+}
+
+// exponent evaluates an exponent to a rational number.
+func (e *elaborator) exponent(x Expr) *big.Rat {
+	v, ok := e.eval(x).elem()
+	if ok {
+		if r, ok := v.Rat(); ok {
+			return r
+		}
+	}
+	panic(newFault(diag.BadExponent, x.Span(), fmt.Sprintf("'%s' is no rational number", String(x)), "an exponent is a whole number or a fraction such as (3/2)"))
+}
+
+func (e *elaborator) limitPower(p *big.Int, n *Power) {
+	if p.CmpAbs(big.NewInt(maxExponent)) > 0 {
+		panic(newFault(diag.ExponentTooLarge, n.Exponent.Span(), fmt.Sprintf("the exponent '%s' is too large", shorten(String(n.Exponent))), "exponents up to 1000 are read"))
+	}
+}
+
+// shorten keeps what is quoted in a message short.
+func shorten(text string) string {
+	if r := []rune(text); len(r) > 24 {
+		return string(r[:20]) + "…"
+	}
+	return text
+}
+
+// limitSize refuses powers of powers that only grow, before they do.
+func (e *elaborator) limitSize(v field.Elem, p int, n *Power) {
+	if p < 0 {
+		p = -p
+	}
+	if p < 2 || v.IsZero() {
+		return
+	}
+	bits := max(v.Num().LeadCoef().BitLen(), v.DenInt().BitLen())
+	degree := v.Num().TotalDegree()
+	if _, isName := n.Base.(*Name); !isName {
+		degree = max(degree, v.Den().TotalDegree())
+	}
+	if bits*p > maxBits || degree*p > maxBits {
+		panic(newFault(diag.ExponentTooLarge, n.At, "the power is too large", "powers of powers multiply their exponents"))
+	}
+}
+
+func (e *elaborator) powerOfForm(base form, r *big.Rat, n *Power) form {
+	if !r.IsInt() || r.Sign() < 0 {
+		if r.Sign() < 0 {
+			panic(newFault(diag.DivideByField, n.Base.Span(), fmt.Sprintf("'%s' holds a perturbation and cannot be divided by", String(n.Base)), "a Lagrangian is divided by constants and functions of time only"))
+		}
+		panic(newFault(diag.BadExponent, n.Exponent.Span(), "a perturbation has whole powers only", "every term of a quadratic Lagrangian is of order 2"))
+	}
+	e.limitPower(r.Num(), n)
+	p := int(r.Num().Int64())
+	if low, _ := base.degrees(); low*p > 2 {
+		panic(e.wrongOrder(low*p, n.At))
+	}
+	out := background(e.k.Int(1), n.At)
+	for range p {
+		out = e.mul(out, base, n.At)
+	}
+	return out.placed(n.At)
+}
+
+func (e *elaborator) evalFactorial(n *Factorial) form {
+	v, ok := e.eval(n.X).elem()
+	if ok {
+		if r, ok := v.Rat(); ok && r.IsInt() && r.Sign() >= 0 {
+			if r.Num().Cmp(big.NewInt(maxExponent)) > 0 {
+				panic(newFault(diag.ExponentTooLarge, n.At, "the factorial is too large", "factorials up to 1000! are read"))
+			}
+			product := new(big.Int).MulRange(1, r.Num().Int64())
+			return background(e.k.Rat(new(big.Rat).SetInt(product)), n.At)
+		}
+	}
+	panic(newFault(diag.BadExponent, n.X.Span(), fmt.Sprintf("'%s' is no whole number", String(n.X)), "a factorial is taken of a whole number"))
+}
+
+func (e *elaborator) limitOrder(n int, at diag.Span) {
+	if n > maxOrder {
+		panic(newFault(diag.OrderTooHigh, at, fmt.Sprintf("a derivative of order %d is too high", n), "derivatives up to order 64 are read"))
+	}
+}
+
+func (e *elaborator) evalPrime(n *Prime) form {
+	f := e.eval(n.X)
+	e.limitOrder(n.Count, n.At)
+	for range n.Count {
+		f = f.dt()
+		e.limitJets(f, n.At)
+	}
+	return f.placed(n.At)
+}
+
+// placed returns f with a single term pointing at the whole expression.
+func (f form) placed(at diag.Span) form {
+	if len(f.terms) == 1 {
+		t := f.terms[0]
+		t.at = at
+		return form{[]formTerm{t}}
+	}
+	return f
+}
+
+func (e *elaborator) limitJets(f form, at diag.Span) {
+	for _, t := range f.terms {
+		e.limitOrder(max(t.u.Time, t.v.Time, t.u.Space, t.v.Space), at)
+	}
+	e.k.Budget().Check(len(f.terms))
+}
+
+// evalDeriv differentiates a function by an argument, or a perturbation by space.
+func (e *elaborator) evalDeriv(n *Deriv) form {
+	if n.Mark == ";" {
+		panic(newFault(diag.NoMeaning, n.At, "a covariant derivative has no meaning in a quadratic Lagrangian", "a space derivative is written with a comma: zeta,i"))
+	}
+	if e.byArgument(n) {
+		s, index := e.partial(n)
+		return background(e.k.FuncJet(s.fn.Fn, index), n.At)
+	}
+	f := e.eval(n.X)
+	for _, r := range n.Label.Text {
+		if !isIndexLetter(r) {
+			panic(e.notAnIndex(n))
+		}
+	}
+	if _, high := f.degrees(); high == 0 {
+		panic(newFault(diag.SpaceOfBackground, n.Label.At, fmt.Sprintf("'%s' depends on time alone and cannot be differentiated by '%s'", String(n.X), n.Label.Text), "perturbations have space derivatives"))
+	}
+	for range n.Label.Text {
+		f = f.dx()
+		e.limitJets(f, n.At)
+	}
+	return f.placed(n.At)
+}
+
+// notAnIndex refuses a label that is neither an argument nor made of index letters.
+func (e *elaborator) notAnIndex(n *Deriv) *fault {
+	hint := "indices over space are the letters i to n and p to s"
+	if s := e.functionOf(n.X); s != nil {
+		hint = fmt.Sprintf("the arguments of %s are: ", s.name)
+		for i, a := range s.fn.Fn.ArgNames {
+			if i > 0 {
+				hint += ", "
+			}
+			hint += a
+		}
+	}
+	return newFault(diag.NotAnIndex, n.Label.At, fmt.Sprintf("'%s' cannot be differentiated by '%s'", String(n), n.Label.Text), hint)
+}
+
+// functionOf returns the free function that x is, or is a partial derivative of.
+func (e *elaborator) functionOf(x Expr) *symbol {
+	switch n := x.(type) {
+	case *Paren:
+		return e.functionOf(n.X)
+	case *Name:
+		if s := e.symbols[n.Name]; s != nil && s.kind == symbolFunction {
+			return e.lookup(n)
+		}
+	case *Deriv:
+		if n.Mark == "," {
+			return e.functionOf(n.X)
+		}
+	case *Call:
+		return e.functionOf(n.Fun)
+	}
+	return nil
+}
+
+// byArgument reports whether a derivative is one by an argument of a function.
+func (e *elaborator) byArgument(n *Deriv) bool {
+	s := e.functionOf(n.X)
+	return n.Mark == "," && s != nil && argumentIndex(s, n.Label.Name) >= 0
+}
+
+// argumentIndex finds an argument by name; X finds X(phi) where there is but one.
+func argumentIndex(s *symbol, name string) int {
+	found := -1
+	for i, a := range s.args {
+		switch {
+		case a.Word.Name() != name:
+		case found >= 0:
+			return -1
+		default:
+			found = i
+		}
+	}
+	return found
+}
+
+// partial returns the function and how often it is differentiated by each argument.
+func (e *elaborator) partial(x Expr) (*symbol, []int) {
+	switch n := x.(type) {
+	case *Paren:
+		return e.partial(n.X)
+	case *Call:
+		s, index := e.partial(n.Fun)
+		e.checkArguments(n, s)
+		return s, index
+	case *Deriv:
+		s, index := e.partial(n.X)
+		i := argumentIndex(s, n.Label.Name)
+		if i < 0 {
+			panic(e.notAnIndex(n))
+		}
+		index[i]++
+		e.limitOrder(index[i], n.At)
+		return s, index
+	}
+	s := e.lookup(x.(*Name))
+	return s, make([]int, len(s.args))
+}
+
+// callee returns the free function that a call names, or nil.
+func (e *elaborator) callee(n *Call) *symbol {
+	x := n.Fun
+	for {
+		switch m := x.(type) {
+		case *Prime:
+			x = m.X
+		case *Deriv:
+			x = m.X
+		case *Name:
+			if s := e.symbols[m.Name]; s != nil && s.kind == symbolFunction {
+				return e.lookup(m)
+			}
+			return nil
+		default:
+			return nil
+		}
+	}
+}
+
+// checkArguments refuses a call with other arguments than those declared.
+func (e *elaborator) checkArguments(n *Call, s *symbol) {
+	declared := s.fn.Fn.ArgNames
+	ok := len(n.Args) == len(declared)
+	for i := 0; ok && i < len(declared); i++ {
+		ok = argumentName(n.Args[i]) == declared[i]
+	}
+	if ok {
+		return
+	}
+	want := s.name + "("
+	for i, a := range declared {
+		if i > 0 {
+			want += ", "
+		}
+		want += a
+	}
+	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' has other arguments than those declared", String(n)),
+		fmt.Sprintf("functions stand for their values on the background: %s) or %s", want, s.name)))
+}
+
+// argumentName is the canonical text of an argument: phi or X(phi).
+func argumentName(x Expr) string {
+	switch n := x.(type) {
+	case *Name:
+		return n.Name
+	case *Call:
+		if f, ok := n.Fun.(*Name); ok && len(n.Args) == 1 {
+			return f.Name + "(" + argumentName(n.Args[0]) + ")"
+		}
+	}
+	return ""
+}
+
+// evalCall is an elementary function, or a free function with its arguments written out.
+func (e *elaborator) evalCall(n *Call) form {
+	if s := e.callee(n); s != nil {
+		e.checkArguments(n, s)
+		return e.eval(n.Fun)
+	}
+	name, isName := n.Fun.(*Name)
+	if isName {
+		for _, f := range elementaryNames {
+			if name.Name == f {
+				return e.elementary(n, f)
+			}
+		}
+		if name.Name == "X" && len(n.Args) == 1 {
+			return e.kineticCall(n)
+		}
+	}
+	e.eval(n.Fun) // an unknown name or a form factor has its own message
+	panic(newFault(diag.NotAFunction, n.At, fmt.Sprintf("'%s' is not declared as a function", String(n.Fun)),
+		"multiplication is written: "+shorten(String(n.Fun))+"*(…)"))
+}
+
+func (e *elaborator) kineticCall(n *Call) form {
+	if phi, ok := n.Args[0].(*Name); ok {
+		if s := e.lookup(phi); s.kind == symbolBackground {
+			return background(e.kineticOf(s.gen), n.At)
+		}
+	}
+	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' is no kinetic term", String(n)), "the form is X(phi) with a scalar declared in 'background'"))
+}
+
+func (e *elaborator) elementary(n *Call, name string) form {
+	if len(n.Args) != 1 {
+		panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' takes one argument", name), "the form is: "+name+"(x)"))
+	}
+	v, ok := e.eval(n.Args[0]).elem()
+	if !ok {
+		panic(newFault(diag.NotBackground, n.Args[0].Span(), fmt.Sprintf("'%s' is a perturbation and cannot stand in an elementary function", String(n.Args[0])), "constants and functions of time stand here"))
+	}
+	out, err := e.k.Elementary(name, v)
+	if err != nil {
+		panic(domainFault(err, n.At))
+	}
+	return background(out, n.At)
+}
+
+// apply lets an operator act on f. Factors compose, the last one acts first.
+func (e *elaborator) apply(operator Expr, f form) form {
+	if !hasBox(operator) {
+		panic(newFault(diag.NotAnOperator, operator.Span(), fmt.Sprintf("'%s' is no operator", String(operator)), "an operator contains box: (box - m^2)[zeta]; elsewhere brackets are round"))
+	}
+	return e.act(operator, f)
+}
+
+// act lets one factor or term of an operator act on f.
+func (e *elaborator) act(x Expr, f form) form {
+	if !hasBox(x) {
+		return e.mul(e.eval(x), f, x.Span())
+	}
+	switch n := x.(type) {
+	case *Name:
+		g := f.box(e.model.A, e.model.Lapse)
+		e.limitJets(g, n.At)
+		return g
+	case *Paren:
+		return e.act(n.X, f)
+	case *Sign:
+		g := e.act(n.X, f)
+		if n.Minus {
+			g = g.scale(e.k.Int(-1))
+		}
+		return g
+	case *Sum:
+		var c collector
+		for _, t := range n.Terms {
+			g := e.act(t.X, f)
+			if t.Minus {
+				g = g.scale(e.k.Int(-1))
+			}
+			c.addForm(g)
+		}
+		return c.form()
+	case *Product:
+		for i := len(n.Factors) - 1; i >= 0; i-- {
+			o := n.Factors[i]
+			switch {
+			case !o.Over:
+				f = e.act(o.X, f)
+			case hasBox(o.X):
+				panic(newFault(diag.NotYetSupported, o.X.Span(), "an operator in a denominator is not yet supported", "sums, products and powers of box can be used"))
+			default:
+				f = f.scale(e.divisor(o.X, "the model divides by it"))
+			}
+		}
+		return f
+	case *Power:
+		if !hasBox(n.Exponent) {
+			return e.actPower(n, f)
+		}
+	}
+	panic(newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("the operator '%s' is not yet supported", shorten(String(x))), "sums, products and powers of box can be used"))
+}
+
+func (e *elaborator) actPower(n *Power, f form) form {
+	r := e.exponent(n.Exponent)
+	if !r.IsInt() || r.Sign() < 0 {
+		panic(newFault(diag.NotYetSupported, n.Exponent.Span(), "powers of operators other than whole ones are not yet supported", "box^2[zeta] acts twice"))
+	}
+	e.limitPower(r.Num(), n)
+	e.limitOrder(2*int(r.Num().Int64()), n.At)
+	for range r.Num().Int64() {
+		f = e.act(n.Base, f)
+	}
+	return f
+}
