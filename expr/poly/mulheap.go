@@ -1,0 +1,285 @@
+// Products and quotients by a heap of outstanding products.
+//
+// The product of a term of the shorter factor with the successive terms of the longer
+// is a row, and rows are in decreasing order. The heap holds the head of each row that
+// has begun; row i+1 begins when row i has given its first product, so a heap of m rows
+// never holds more than it must. Products with the same monomial that meet in the heap
+// are chained and leave it together (Johnson 1974; [MonaganPearce2011]). Cost:
+// O(nm log min(n, m)) comparisons, memory O(min(n, m)) beside the result.
+
+package poly
+
+import (
+	"math/big"
+	"math/bits"
+)
+
+// checkEvery is the number of terms of a result between two looks at the budget.
+const checkEvery = 1 << 12
+
+// entry is a heap element on one-word monomials: a chain of rows whose heads have the
+// monomial key.
+type entry struct {
+	key   uint64
+	chain int32
+}
+
+// rowHeap is a heap of chained rows, greatest key first.
+type rowHeap struct {
+	heap []entry
+	next []int32 // the next row in a chain, or −1
+}
+
+// push adds row with monomial key, chaining it to an equal key if one is met.
+func (h *rowHeap) push(key uint64, row int32) {
+	if len(h.heap) > 0 && h.heap[0].key == key {
+		h.next[row] = h.heap[0].chain
+		h.heap[0].chain = row
+		return
+	}
+	i := len(h.heap)
+	for j := i; j > 0; {
+		up := (j - 1) / 2
+		k := h.heap[up].key
+		if k == key {
+			h.next[row] = h.heap[up].chain
+			h.heap[up].chain = row
+			return
+		}
+		if k > key {
+			break
+		}
+		j = up
+	}
+	h.next[row] = -1
+	h.heap = append(h.heap, entry{})
+	for i > 0 {
+		up := (i - 1) / 2
+		if h.heap[up].key > key {
+			break
+		}
+		h.heap[i] = h.heap[up]
+		i = up
+	}
+	h.heap[i] = entry{key, row}
+}
+
+// pop removes the greatest entry and returns its chain.
+func (h *rowHeap) pop() int32 {
+	heap := h.heap
+	chain := heap[0].chain
+	n := len(heap) - 1
+	last := heap[n]
+	heap = heap[:n]
+	h.heap = heap
+	if n == 0 {
+		return chain
+	}
+	// Move the hole to the bottom along the greater children, then the last entry up.
+	i := 0
+	for {
+		c := 2*i + 1
+		if c+1 < n {
+			if heap[c].key < heap[c+1].key {
+				c++
+			}
+		} else if c >= n {
+			break
+		}
+		heap[i] = heap[c]
+		i = c
+	}
+	for i > 0 {
+		up := (i - 1) / 2
+		if heap[up].key >= last.key {
+			break
+		}
+		heap[i] = heap[up]
+		i = up
+	}
+	heap[i] = last
+	return chain
+}
+
+// mulHeap multiplies word coefficients on one-word monomials.
+func (o Ops) mulHeap(b *builder, p, q operand) {
+	pe, pc, qe, qc := p.exps, p.co, q.exps, q.co
+	n := len(pe)
+	h := rowHeap{heap: make([]entry, 0, n), next: make([]int32, n)}
+	at := make([]int32, n) // at[i] is the position of row i's head in q
+	ready := make([]int32, 0, n)
+	small := maxBits(pc)+maxBits(qc)+bits.Len(uint(n)) <= 63
+	b.exps = make([]uint64, 0, n+len(qe))
+	b.co = make([]int64, 0, n+len(qe))
+	h.push(pe[0]+qe[0], 0)
+	for len(h.heap) > 0 {
+		key := h.heap[0].key
+		var sum int64
+		var a acc
+		ready = ready[:0]
+		for len(h.heap) > 0 && h.heap[0].key == key {
+			for r := h.pop(); r >= 0; r = h.next[r] {
+				if small {
+					sum += pc[r] * qc[at[r]]
+				} else {
+					a.addMul(pc[r], qc[at[r]])
+				}
+				ready = append(ready, r)
+			}
+		}
+		if small && sum != 0 {
+			b.exps = append(b.exps, key)
+			b.word(sum)
+		} else if !small && !a.isZero() {
+			b.exps = append(b.exps, key)
+			b.acc(&a)
+		}
+		if len(b.exps)%checkEvery == 0 {
+			o.Budget.Check(len(b.exps))
+		}
+		for _, r := range ready {
+			if at[r] == 0 && int(r)+1 < n {
+				h.push(pe[r+1]+qe[0], r+1)
+			}
+			if at[r]++; int(at[r]) < len(qe) {
+				h.push(pe[r]+qe[at[r]], r)
+			}
+		}
+	}
+}
+
+// rows is the heap for monomials of any number of words: each row keeps the monomial of
+// its head.
+type rows struct {
+	words int
+	key   []uint64 // words for each row
+	heap  []int32
+}
+
+func newRows(n, words int) *rows {
+	return &rows{words: words, key: make([]uint64, 0, n*words), heap: make([]int32, 0, n)}
+}
+
+func (h *rows) mono(r int32) []uint64 {
+	return h.key[int(r)*h.words : (int(r)+1)*h.words]
+}
+
+// push sets the head of row r to a·b and adds it to the heap. A new row has the next
+// number.
+func (h *rows) push(r int32, a, b []uint64) {
+	if int(r)*h.words == len(h.key) {
+		h.key = append(h.key, a...)
+	}
+	k := h.mono(r)
+	for i := range k {
+		k[i] = a[i] + b[i]
+	}
+	i := len(h.heap)
+	h.heap = append(h.heap, r)
+	for i > 0 {
+		up := (i - 1) / 2
+		if compareMono(h.mono(h.heap[up]), k) >= 0 {
+			break
+		}
+		h.heap[i] = h.heap[up]
+		i = up
+	}
+	h.heap[i] = r
+}
+
+// pop removes the row with the greatest head.
+func (h *rows) pop() int32 {
+	top := h.heap[0]
+	n := len(h.heap) - 1
+	last := h.heap[n]
+	h.heap = h.heap[:n]
+	i := 0
+	for c := 1; c < n; c = 2*i + 1 {
+		if c+1 < n && compareMono(h.mono(h.heap[c]), h.mono(h.heap[c+1])) < 0 {
+			c++
+		}
+		if compareMono(h.mono(last), h.mono(h.heap[c])) >= 0 {
+			break
+		}
+		h.heap[i] = h.heap[c]
+		i = c
+	}
+	if n > 0 {
+		h.heap[i] = last
+	}
+	return top
+}
+
+// topIs reports whether the greatest head is the monomial e.
+func (h *rows) topIs(e []uint64) bool {
+	return len(h.heap) > 0 && compareMono(h.mono(h.heap[0]), e) == 0
+}
+
+// mulHeapWords multiplies word coefficients on monomials of several words.
+func (o Ops) mulHeapWords(b *builder, p, q operand) {
+	o.mulRows(b, p, q, func(next func() (int, int, bool)) bool {
+		var a acc
+		for i, j, ok := next(); ok; i, j, ok = next() {
+			a.addMul(p.co[i], q.co[j])
+		}
+		if a.isZero() {
+			return false
+		}
+		b.acc(&a)
+		return true
+	})
+}
+
+// mulHeapBig multiplies big coefficients.
+func (o Ops) mulHeapBig(b *builder, p, q operand) {
+	var t big.Int
+	o.mulRows(b, p, q, func(next func() (int, int, bool)) bool {
+		a := new(big.Int)
+		for i, j, ok := next(); ok; i, j, ok = next() {
+			a.Add(a, t.Mul(p.bg[i], q.bg[j]))
+		}
+		if a.Sign() == 0 {
+			return false
+		}
+		b.big(a)
+		return true
+	})
+}
+
+// mulRows drives the heap for monomials of any number of words. For each monomial of
+// the product it calls sum, which adds up the pairs of terms that next yields and
+// reports whether the result was not zero.
+func (o Ops) mulRows(b *builder, p, q operand, sum func(next func() (int, int, bool)) bool) {
+	w, n, m := b.lay.words, p.len(), q.len()
+	h := newRows(n, w)
+	at := make([]int, n)
+	ready := make([]int32, 0, n)
+	top := make([]uint64, w)
+	next := func() (int, int, bool) {
+		if !h.topIs(top) {
+			return 0, 0, false
+		}
+		r := h.pop()
+		ready = append(ready, r)
+		return int(r), at[r], true
+	}
+	h.push(0, p.exps[:w], q.exps[:w])
+	for len(h.heap) > 0 {
+		copy(top, h.mono(h.heap[0]))
+		ready = ready[:0]
+		if sum(next) {
+			b.exps = append(b.exps, top...)
+		}
+		if b.len()%checkEvery == 0 {
+			o.Budget.Check(b.len())
+		}
+		for _, r := range ready {
+			if i := int(r) + 1; at[r] == 0 && i < n {
+				h.push(r+1, p.exps[i*w:i*w+w], q.exps[:w])
+			}
+			if at[r]++; at[r] < m {
+				h.push(r, p.exps[int(r)*w:int(r)*w+w], q.exps[at[r]*w:at[r]*w+w])
+			}
+		}
+	}
+}
