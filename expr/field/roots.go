@@ -38,26 +38,28 @@ func (f *Field) Sqrt(e Elem) (Elem, error) {
 	root, free := squareFreeInt(n)
 	out = out.Mul(f.Rat(new(big.Rat).SetFrac(root, e.DenInt())))
 	rad = rad.MulInt(free)
+	var left []power
 	for _, p := range append(powers, negated(e.den.pow)...) {
 		q := Elem{f: f, num: f.factors[p.id].p}
 		half := p.exp >> 1 // floor, also for negative exponents
-		if half != 0 && p.exp%2 == 0 {
-			f.assumePositive(q, "it leaves a square root")
-		}
+		left = append(left, power{p.id, half})
 		out = out.Mul(q.Pow(int(half)))
 		if p.exp%2 != 0 {
-			if half != 0 && p.exp < 0 {
-				f.assumePositive(q, "it leaves a square root")
-			}
 			rad = f.ops.Mul(rad, q.num)
 		}
 	}
+	out = f.positive(out, big.NewInt(1), left, []poly.Poly{rad})
 	if rad.IsOne() {
 		return out, nil
 	}
 	s, err := f.rootOf(rad)
 	if err != nil {
 		return Elem{}, err
+	}
+	for _, g := range s.Gens() {
+		if in := f.gens[g]; in.Kind == Root && in.Name == "cos" {
+			f.assumePositive(f.Raw(g), "it leaves a square root")
+		}
 	}
 	return out.Mul(s), nil
 }
@@ -97,16 +99,23 @@ func squareFreeInt(n *big.Int) (root, free *big.Int) {
 // product of their radicands is a square.
 func (f *Field) rootOf(r poly.Poly) (Elem, error) {
 	n := len(f.roots)
+	for _, g := range f.roots {
+		if f.gens[g].Arg.num.Equal(r) {
+			return f.Raw(g), nil
+		}
+	}
 	for set := range 1 << n {
-		prod, by := r, f.Int(1)
+		radicands, prod, by := []poly.Poly{r}, r, f.Int(1)
 		for i, g := range f.roots {
 			if set>>i&1 == 1 {
+				radicands = append(radicands, f.gens[g].Arg.num)
 				prod = f.ops.Mul(prod, f.gens[g].Arg.num)
 				by = by.Mul(f.Raw(g))
 			}
 		}
 		if t, ok := prod.IsSquare(); ok {
-			return Elem{f: f, num: t}.Div(by), nil
+			content, powers := f.factorise(t)
+			return f.positive(Elem{f: f, num: t}, content, powers, radicands).Div(by), nil
 		}
 	}
 	if n == maxRoots {
