@@ -23,10 +23,9 @@ type elaborator struct {
 	k      *field.Field
 
 	symbols  map[string]*symbol
-	names    []string // of symbols, in the order of declaration
-	related  bool     // the background relations are complete
-	anywhere bool     // names may be used at any place: the text is not the model's
-	opening  []*symbol
+	names    []string                // of symbols, in the order of declaration
+	related  bool                    // the background relations are complete
+	anywhere bool                    // names may be used at any place: the text is not the model's
 	leaders  map[field.Gen]diag.Span // what the givens define
 	hasGap   bool                    // a declaration is missing, so unknown names prove nothing
 }
@@ -109,6 +108,11 @@ func (e *elaborator) report(f *fault) {
 		return
 	}
 	f.Source = e.src
+	for _, old := range e.faults {
+		if old.Kind == f.Kind && old.Span == f.Span && old.Source == f.Source {
+			return // an abbreviation is evaluated more than once
+		}
+	}
 	e.faults = append(e.faults, f.Diagnostic)
 }
 
@@ -117,23 +121,24 @@ func (e *elaborator) once() {
 	first := map[string]diag.Span{}
 	for _, s := range e.file.Statements {
 		switch {
-		case s.Model != nil:
-			e.model.Title = s.Model.Text()
-		case s.Clock != nil:
-			e.model.Clock = clockOf(s.Clock.Name())
-		case s.Gauge != nil, s.Sector != nil, s.Lagrangian != nil, s.Keep != nil, s.Small != nil:
+		case s.Model != nil, s.Clock != nil, s.Gauge != nil, s.Sector != nil, s.Lagrangian != nil, s.Keep != nil, s.Small != nil:
 		default:
 			continue
 		}
 		word := s.Keyword.Text
-		old, ok := first[word]
-		if !ok {
-			first[word] = s.Keyword.Span()
+		if old, ok := first[word]; ok {
+			f := newFault(diag.StatementTwice, s.Keyword.Span(), fmt.Sprintf("a second %s statement", word), "one is allowed in a file")
+			f.Related = []diag.Related{{Span: old, Label: "the first one"}}
+			e.report(f)
 			continue
 		}
-		f := newFault(diag.StatementTwice, s.Keyword.Span(), fmt.Sprintf("a second %s statement", word), "one is allowed in a file")
-		f.Related = []diag.Related{{Span: old, Label: "the first one"}}
-		e.report(f)
+		first[word] = s.Keyword.Span()
+		switch {
+		case s.Model != nil:
+			e.model.Title = s.Model.Text()
+		case s.Clock != nil:
+			e.model.Clock = clockOf(s.Clock.Name())
+		}
 	}
 }
 
@@ -198,6 +203,11 @@ func (e *elaborator) declarations(s *Statement) {
 		}
 	case s.FormFactor != nil:
 		e.declare(&s.FormFactor.Word, symbolFormFactor, s.At.End)
+		if r := s.FormFactor.Rule; r != nil {
+			if f := oneOf(&r.Of, []string{s.FormFactor.Word.Text}); f != nil {
+				e.report(f)
+			}
+		}
 	case s.Let != nil:
 		if sym := e.declare(&s.Let.Word, symbolLet, s.At.End); sym != nil {
 			sym.let = s.Let
@@ -668,7 +678,7 @@ func (m *Model) Point(src *diag.Source) (list []Assignment, err error) {
 func domainFault(err error, at diag.Span) *fault {
 	var zero *field.ErrZeroDivisor
 	if errors.As(err, &zero) {
-		return newFault(diag.DivideByZero, at, "this divides by zero", "")
+		return newFault(diag.DivideByZero, at, "this divides by zero", "a denominator vanishes by the background relations")
 	}
-	return newFault(diag.BadArgument, at, err.Error(), "")
+	return newFault(diag.BadArgument, at, err.Error(), "this cannot be computed exactly")
 }

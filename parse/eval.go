@@ -3,6 +3,7 @@ package parse
 import (
 	"fmt"
 	"math/big"
+	"slices"
 
 	"remnant/expr/field"
 	"remnant/parse/diag"
@@ -135,17 +136,10 @@ func (e *elaborator) letValue(s *symbol) form {
 	if s.value != nil {
 		return *s.value
 	}
-	for _, o := range e.opening {
-		if o == s {
-			panic(newFault(diag.UsedBefore, s.at, fmt.Sprintf("'%s' stands in its own definition", s.name), "an abbreviation is made of names above it"))
-		}
-	}
 	src, anywhere := e.src, e.anywhere
-	e.src, e.anywhere = e.model.Source, false
-	e.opening = append(e.opening, s)
+	defer func() { e.src, e.anywhere = src, anywhere }()
+	e.src, e.anywhere = e.model.Source, false // it stands in the file, below what it is made of
 	f := e.value(s.let.Value.X)
-	e.opening = e.opening[:len(e.opening)-1]
-	e.src, e.anywhere = src, anywhere
 	if e.related {
 		s.value = &f
 	}
@@ -208,7 +202,7 @@ func (e *elaborator) zeroHint(x Expr) string {
 	if g, ok := e.symbolGen(x); ok {
 		for _, r := range e.k.Rules() {
 			if r.Leader == g && len(r.Sources) > 0 {
-				return "it vanishes by the relation " + e.model.Relations[r.Sources[0]].Text
+				return "it vanishes by the relation " + e.model.Relations[slices.Max(r.Sources)].Text
 			}
 		}
 	}

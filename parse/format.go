@@ -150,7 +150,7 @@ func (p *printer) pieceLines(pieces []piece, list bool) {
 		if piece.mark != "" {
 			indent = "  " + piece.mark
 		}
-		for j, part := range wrap(text, layoutWidth-4) {
+		for j, part := range wrap(text, layoutWidth-6) {
 			if j > 0 {
 				indent = "      "
 			}

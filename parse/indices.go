@@ -20,8 +20,18 @@ type use struct {
 
 // checkIndices refuses an expression in which an index is not summed.
 func (e *elaborator) checkIndices(x Expr) {
+	switch n := x.(type) {
+	case *Paren:
+		e.checkIndices(n.X)
+		return
+	case *Sum:
+		for _, t := range n.Terms {
+			e.checkIndices(t.X)
+		}
+		return
+	}
 	if free := e.free(x); len(free) > 0 {
-		panic(indexFault(diag.IndexOnce, free[0], "once"))
+		panic(indexFault(diag.IndexOnce, free[len(free)-1], "once"))
 	}
 }
 
@@ -79,6 +89,8 @@ func (e *elaborator) free(x Expr) []use {
 		e.noneFree(e.free(n.X), "a factorial")
 	case *Apply:
 		return e.free(n.X)
+	case *Index:
+		panic(e.indexed(n))
 	}
 	return nil
 }
@@ -142,8 +154,8 @@ func (e *elaborator) freeSum(n *Sum) []use {
 }
 
 func mismatch(u use) *fault {
-	return newFault(diag.IndexMismatch, u.at, fmt.Sprintf("index %c is free in one term of a sum and not in another", u.letter),
-		"all terms of a sum must have the same free indices")
+	return newFault(diag.IndexMismatch, u.at, fmt.Sprintf("index %c stands once in this term of a sum and not so in another", u.letter),
+		"every index must stand twice in a product, or once in each term of a bracket")
 }
 
 // missing returns an index of a that b lacks.

@@ -167,12 +167,7 @@ func checkWords(s *Statement) *fault {
 	case s.Lagrangian != nil:
 		return oneOf(&s.Lagrangian.Form, formWords)
 	case s.FormFactor != nil:
-		if f := oneOf(&s.FormFactor.Argument, []string{"box"}); f != nil {
-			return f
-		}
-		if r := s.FormFactor.Rule; r != nil && r.Of.Name() != s.FormFactor.Word.Name() {
-			return oneOf(&r.Of, []string{s.FormFactor.Word.Text})
-		}
+		return oneOf(&s.FormFactor.Argument, []string{"box"})
 	}
 	return nil
 }

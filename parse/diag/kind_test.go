@@ -15,11 +15,13 @@ import (
 
 // madeByTests are the kinds whose smallest example is no readable text.
 var madeByTests = map[diag.Kind]func() (string, func(*diag.Source) error){
-	diag.TooLarge:     func() (string, func(*diag.Source) error) { return strings.Repeat("#\n", 5<<20), load },
-	diag.Binary:       func() (string, func(*diag.Source) error) { return "model \"\x00\"", load },
-	diag.NotUTF8:      func() (string, func(*diag.Source) error) { return "model \"\xff\"", load },
-	diag.TooDeep:      func() (string, func(*diag.Source) error) { return "let x = " + strings.Repeat("(", 1001), load },
-	diag.OrderTooHigh: func() (string, func(*diag.Source) error) { return "fields u\nkeep v = u" + strings.Repeat("'", 65), load },
+	diag.TooLarge: func() (string, func(*diag.Source) error) { return strings.Repeat("#", 8<<20+1), load },
+	diag.Binary:   func() (string, func(*diag.Source) error) { return "model \"\x00\"", load },
+	diag.NotUTF8:  func() (string, func(*diag.Source) error) { return "model \"\xff\"", load },
+	diag.TooDeep:  func() (string, func(*diag.Source) error) { return "let x = " + strings.Repeat("(", 1001), load },
+	diag.OrderTooHigh: func() (string, func(*diag.Source) error) {
+		return "fields u\nkeep v = u" + strings.Repeat("'", 65), load
+	},
 	diag.PointForm: func() (string, func(*diag.Source) error) {
 		return "H", func(s *diag.Source) error { _, faults := parse.Points(s); return faults.Err() }
 	},
