@@ -58,6 +58,9 @@ func (o Ops) gcdPrimitive(p, q Poly) Poly {
 	case p.Equal(q):
 		return p
 	}
+	if g, ok := o.gcdModular(p, q); ok {
+		return g
+	}
 	return o.gcdPRS(p, q)
 }
 
