@@ -10,6 +10,7 @@ package poly
 
 import (
 	"math/big"
+	"math/bits"
 	"slices"
 )
 
@@ -20,9 +21,6 @@ const (
 	attempts = 6
 	// maxDense is the greatest degree for which dense univariate images are used.
 	maxDense = 1 << 14
-	// maxPrimes is the number of primes for one attempt; coefficients of up to
-	// 62·maxPrimes bits are found.
-	maxPrimes = 512
 )
 
 // gcdModular is the gcd of primitive polynomials, not constant, that no monomial
@@ -182,7 +180,7 @@ func (c *candidates) zippel(try int) (Poly, bool) {
 	var known crt
 	residue := make([]uint64, len(s.co))
 	co := s.co
-	for n := range maxPrimes {
+	for n := range c.maxPrimes(gamma) {
 		for i, r := range co {
 			residue[i] = f.out(r)
 		}
@@ -200,6 +198,29 @@ func (c *candidates) zippel(try int) (Poly, bool) {
 		}
 	}
 	return Poly{}, false
+}
+
+// maxPrimes is a number of primes whose product is greater than twice any coefficient of
+// h, by Gelfond's bound: the heights of factors of p multiply to at most that of p times
+// e to the sum of degrees, and 2³ is more than e².
+func (c *candidates) maxPrimes(gamma Poly) int {
+	n := 2 + gamma.height() + max(c.p.height(), c.q.height()) + bits.Len(uint(gamma.Len()))
+	for i := range c.vars {
+		n += 2 * max(c.dp[i], c.dq[i])
+	}
+	return 2 + n/61
+}
+
+// height is the bit length of the greatest coefficient.
+func (p Poly) height() int {
+	if p.d.bg == nil {
+		return maxBits(p.d.co)
+	}
+	n := 0
+	for _, c := range p.d.bg {
+		n = max(n, c.BitLen())
+	}
+	return n
 }
 
 // otherPrime computes h on the monomials s modulo the first prime from the i-th on that
@@ -242,7 +263,7 @@ func (c *candidates) arrange() (order []Var, gamma Poly) {
 	}
 	for _, v := range gamma.Vars() {
 		if !slices.Contains(order, v) {
-			gamma = c.o.gcdOfCoeffs(Poly{}, v, gamma)
+			gamma = c.o.gcdOfCoeffs(Poly{}, v, gamma).MulInt(gamma.Content())
 		}
 	}
 	return order, gamma
@@ -277,34 +298,43 @@ func (z *zippel) poly(order []Var, gamma Poly, s form, co []*big.Int) Poly {
 	return gamma.MulMono(power(order[0], uint64(z.deg))).Add(FromTerms(terms))
 }
 
-// prove takes h to the gcd, if it is right: the part of h that is primitive in x divides
-// p and q and has the greatest degree in x that the gcd can have, so it is the gcd but
-// for a factor free of x, which divides all coefficients of both quotients.
+// prove takes h to the gcd, if it is right. A common divisor with the greatest degree in
+// x that the gcd can have is the gcd but for a factor free of x, and that divides all
+// coefficients of both quotients. If h itself is no divisor, it may be so for a factor
+// of Γ, free of x, that is divided out.
 func (c *candidates) prove(h Poly, x Var) (Poly, bool) {
-	h = h.primitive()
-	if h.IsZero() {
-		return h, false
+	h = h.primitive().positive()
+	i, _ := slices.BinarySearch(c.vars, x)
+	if h.Degree(x) != c.bound[i] {
+		return Poly{}, false
 	}
-	if c.exceeds(h) {
-		h = c.o.quo(h, c.o.gcdOfCoeffs(Poly{}, x, h)).primitive()
-	}
-	u, ok := c.o.DivExact(c.p, h)
+	u, v, ok := c.cofactors(h)
 	if !ok {
-		return Poly{}, false
-	}
-	v, ok := c.o.DivExact(c.q, h)
-	if !ok {
-		return Poly{}, false
-	}
-	h = h.positive()
-	if i, _ := slices.BinarySearch(c.vars, x); h.Degree(x) != c.bound[i] {
-		return Poly{}, false
+		content := c.o.gcdOfCoeffs(Poly{}, x, h)
+		if content.IsOne() {
+			return Poly{}, false
+		}
+		h = c.o.quo(h, content).positive()
+		if u, v, ok = c.cofactors(h); !ok {
+			return Poly{}, false
+		}
 	}
 	if c.reached(h) {
 		return h, true
 	}
 	rest := c.o.gcdOfCoeffs(c.o.gcdOfCoeffs(Poly{}, x, u), x, v)
 	return c.o.Mul(h, rest).positive(), true
+}
+
+// cofactors is p/h and q/h, if h divides both.
+func (c *candidates) cofactors(h Poly) (u, v Poly, ok bool) {
+	if c.exceeds(h) {
+		return
+	}
+	if u, ok = c.o.DivExact(c.p, h); ok {
+		v, ok = c.o.DivExact(c.q, h)
+	}
+	return u, v, ok
 }
 
 // exceeds reports whether h has a higher degree than the gcd can have.
