@@ -192,3 +192,18 @@ func (f *Field) plainName(g Gen) string {
 	}
 	return s
 }
+
+// CoeffsIn gives e as a polynomial in generator g, coefficients by power; false if g stands
+// in the denominator.
+func (e Elem) CoeffsIn(g Gen) ([]Elem, bool) {
+	e = e.live()
+	unit := Elem{f: e.f, num: poly.FromInt(1), den: e.den}
+	if unit.Has(g) {
+		return nil, false
+	}
+	var out []Elem
+	for _, c := range e.num.CoeffsIn(g) {
+		out = append(out, Elem{f: e.f, num: c}.Mul(unit))
+	}
+	return out, true
+}

@@ -1,0 +1,112 @@
+package reduce
+
+// The elimination: pivots while there are any, then hidden constraints, which make new
+// pivots, until the leading matrix is regular.
+
+import (
+	"fmt"
+	"strings"
+)
+
+// elimination is the state of a run.
+type elimination struct {
+	fields  []string // of the model, in declared order
+	now     System
+	steps   []Step
+	keep    string // the field asked for, under its present name; "" if none was
+	weights []int  // of what remains, once it has a regular leading matrix
+	taken   map[string]bool
+}
+
+// GaugeError says that 𝒟 is singular for every k: a direction in field space is free.
+type GaugeError struct {
+	Direction []Addend // one entry for each field of the model that moves, acting on ξ
+}
+
+func (e *GaugeError) Error() string { return "the action has a gauge direction" }
+
+// run eliminates until only propagating fields are left.
+func (e *elimination) run() error {
+	for len(e.now.Names) > 0 {
+		keep := e.now.index(e.keep)
+		if g, ok := e.gaugeRow(); ok {
+			return e.gaugeError(g)
+		}
+		if e.onePivot(keep) {
+			continue
+		}
+		step, weights, found := e.now.exposeHidden(keep, e.rename)
+		if !found {
+			e.weights = weights
+			if keep >= 0 && len(e.now.Names) == 1 && e.onePivot(-1) {
+				continue // the kept field is the last one, and does not propagate either
+			}
+			return nil
+		}
+		e.apply(step)
+	}
+	return nil
+}
+
+// onePivot eliminates by the best pivot that does not involve field keep.
+func (e *elimination) onePivot(keep int) bool {
+	p, ok := e.now.choosePivot(keep)
+	if !ok {
+		return false
+	}
+	if p.q < 0 {
+		e.now.K.Budget().Stage("eliminating " + e.now.Names[p.p])
+		e.apply(e.now.solveAuxiliary(p.p))
+	} else {
+		e.now.K.Budget().Stage("eliminating " + e.now.Names[p.p] + " and " + e.now.Names[p.q])
+		e.apply(e.now.solveMultiplier(p.p, p.q))
+	}
+	return true
+}
+
+func (e *elimination) apply(s Step) {
+	for _, sol := range s.Solutions {
+		if s.Kind == Redefined && sol.Name == e.keep {
+			e.keep = sol.Sum[0].Name
+		}
+	}
+	e.steps = append(e.steps, s)
+	e.now = s.After
+}
+
+// rename gives a redefined field the next free number: zeta, zeta_1, zeta_2.
+func (e *elimination) rename(name string) string {
+	base := name
+	if i := strings.LastIndexByte(name, '_'); i > 0 && e.taken[name[:i]] {
+		base = name[:i]
+	}
+	for n := 1; ; n++ {
+		if c := fmt.Sprintf("%s_%d", base, n); !e.taken[c] {
+			e.taken[c] = true
+			return c
+		}
+	}
+}
+
+func (e *elimination) gaugeRow() (int, bool) {
+	for i := range e.now.Names {
+		if e.now.rowVanishes(i) {
+			return i, true
+		}
+	}
+	return 0, false
+}
+
+// gaugeError expresses the free direction in the fields that the model declares.
+func (e *elimination) gaugeError(i int) error {
+	xi := e.now.Names[i]
+	var dir []Addend
+	for _, name := range e.fields {
+		for _, a := range Express(e.now.K, e.steps, name) {
+			if a.Name == xi && !a.Coef.IsZero() {
+				dir = append(dir, Addend{a.Coef, name})
+			}
+		}
+	}
+	return &GaugeError{dir}
+}

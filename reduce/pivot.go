@@ -1,0 +1,63 @@
+package reduce
+
+// The choice of the next pivot: a field of order 0 on the diagonal, or a multiplier with a
+// partner to which it is joined without derivatives. The kept field is no pivot. Of several,
+// the one whose determinant has the fewest terms; of these a pair before a single field, since
+// it removes two under one condition; then the lowest degree; then the first as declared. The
+// choice is deterministic.
+
+import "remnant/expr/field"
+
+// pivot is a field p, or a multiplier p with its partner q (q = −1: none).
+type pivot struct {
+	p, q   int
+	terms  int
+	degree int
+}
+
+func (a pivot) before(b pivot) bool {
+	switch {
+	case a.terms != b.terms:
+		return a.terms < b.terms
+	case (a.q < 0) != (b.q < 0):
+		return a.q >= 0
+	case a.degree != b.degree:
+		return a.degree < b.degree
+	case a.p != b.p:
+		return a.p < b.p
+	}
+	return a.q < b.q
+}
+
+// choosePivot finds the best pivot that does not involve the field keep (−1: any may go).
+func (s System) choosePivot(keep int) (pivot, bool) {
+	best, found := pivot{}, false
+	offer := func(c pivot) {
+		if !found || c.before(best) {
+			best, found = c, true
+		}
+	}
+	for p := range s.Names {
+		if p == keep {
+			continue
+		}
+		switch d := s.D.At(p, p); d.Order() {
+		case 0:
+			offer(pivot{p, -1, d.Coef(0).Num().Len(), d.Coef(0).Num().TotalDegree()})
+		case -1:
+			for q := range s.Names {
+				if q == keep || q == p || s.D.At(p, q).Order() != 0 {
+					continue
+				}
+				offer(pairPivot(p, q, s.D.At(p, q).Coef(0)))
+			}
+		}
+	}
+	return best, found
+}
+
+// pairPivot rates the determinant −c² of the block; its terms are those of a square.
+func pairPivot(p, q int, c field.Elem) pivot {
+	n := c.Num().Len()
+	return pivot{p, q, n * (n + 1) / 2, 2 * c.Num().TotalDegree()}
+}

@@ -1,0 +1,92 @@
+package reduce
+
+// Refusals of a model that the notation accepts. The comment of each kind holds the smallest
+// example; a test runs the examples.
+
+import (
+	"errors"
+	"fmt"
+	"strings"
+
+	"remnant/expr/oper"
+	"remnant/expr/show"
+	"remnant/parse"
+	"remnant/parse/diag"
+)
+
+const (
+	// KeptField: the field to keep is fixed by the others, and another one propagates.
+	//
+	// Example:
+	//	fields u, v
+	//	lagrangian quadratic = u'^2/2 - v^2/2 + u*v
+	//	keep v
+	KeptField diag.Kind = "kept field does not propagate"
+
+	// GaugeDirection: the action does not change in some direction, for every k.
+	//
+	// Example:
+	//	fields u, v
+	//	lagrangian quadratic = (u' - v)^2/2
+	GaugeDirection diag.Kind = "gauge direction"
+)
+
+// keptRemains refuses a kept field that carries no degree of freedom while another does: one
+// that could be solved for, had it not been kept.
+func keptRemains(m *parse.Model, initial System, e *elimination) error {
+	keep := e.now.index(e.keep)
+	if m.Keep == nil || keep < 0 || len(e.now.Names) < 2 {
+		return nil
+	}
+	if p, ok := e.now.choosePivot(-1); !ok || p.p != keep && p.q != keep {
+		return nil
+	}
+	free := &elimination{now: initial, fields: e.fields, taken: map[string]bool{}}
+	for _, n := range e.fields {
+		free.taken[n] = true
+	}
+	if err := free.run(); err != nil {
+		return err
+	}
+	names := quoteAll(free.now.Names)
+	return diag.List{{
+		Kind: KeptField, Source: m.Source, Span: m.Keep.Span,
+		Summary: fmt.Sprintf("'%s' does not propagate: it is fixed by the other fields", m.Keep.Name),
+		Hint:    "what propagates is " + names + "; write 'keep " + free.now.Names[0] + "'",
+	}}
+}
+
+func quoteAll(names []string) string {
+	q := make([]string, len(names))
+	for i, n := range names {
+		q[i] = "'" + n + "'"
+	}
+	return strings.Join(q, " and ")
+}
+
+// gaugeDiagnostic says in which direction the action does not change.
+func gaugeDiagnostic(m *parse.Model, err error) error {
+	var g *GaugeError
+	if !errors.As(err, &g) {
+		return err
+	}
+	var parts []string
+	for _, a := range g.Direction {
+		parts = append(parts, "δ"+show.UnicodeName(a.Name)+" = "+operatorOn(a.Coef, "ξ"))
+	}
+	return diag.List{{
+		Kind: GaugeDirection, Source: m.Source, Span: m.LagrangianSpan,
+		Summary: "the action has a gauge direction, " + strings.Join(parts, ", ") + ": its matrix is singular for every k",
+		Hint:    "fix the gauge: leave out one field that this direction moves, where that fixes it completely",
+	}}
+}
+
+func operatorOn(a oper.Oper, name string) string {
+	var terms []show.LinearTerm
+	for i := a.Order(); i >= 0; i-- {
+		if c := a.Coef(i); !c.IsZero() {
+			terms = append(terms, show.LinearTerm{Coef: c, Name: name, Order: i})
+		}
+	}
+	return show.Text(show.Linear(terms), 0)
+}

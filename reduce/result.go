@@ -1,0 +1,131 @@
+package reduce
+
+// The main job: a model in, what remains out.
+
+import (
+	"errors"
+	"strings"
+
+	"remnant/expr/budget"
+	"remnant/expr/field"
+	"remnant/parse"
+)
+
+// Result is a reduction. It is not changed after it was made.
+type Result struct {
+	Model            *parse.Model
+	Initial          System // the quadratic form of the Lagrangian
+	Steps            []Step
+	Remaining        System
+	Weights          []int // half the order of each remaining field in the leading matrix
+	DegreesOfFreedom int
+	Count            Count  // the independent count, which agrees
+	Variable         string // the field that remains; "" if none or several do
+	Requested        string // what the model asked to keep; "" if it did not
+	Single           *Single
+	Several          *Several
+	Stability        []Statement
+	Assumptions      []field.Assumption // all that was assumed, from the model's own text on
+}
+
+// ErrCount says that the elimination and the independent count disagree: a fault of the
+// program, which must not be taken for a result.
+var ErrCount = errors.New("the independent count of solutions disagrees with the elimination; this is a fault of the program, please report the model")
+
+// Reduce takes the model's action to what remains of it. Refusals are a diag.List; a limit
+// or an interruption is a *budget.Stop.
+func Reduce(m *parse.Model) (r *Result, err error) {
+	defer budget.Catch(&err)
+	b := m.K.Budget()
+	b.Stage("writing the Lagrangian as a quadratic form")
+	r = &Result{Model: m, Initial: Quadratic(m)}
+	e := start(m, r.Initial)
+	if m.Keep != nil {
+		r.Requested = m.Keep.Name
+	}
+	if err := e.run(); err != nil {
+		return nil, gaugeDiagnostic(m, err)
+	}
+	if err := keptRemains(m, r.Initial, e); err != nil {
+		return nil, err
+	}
+	r.Steps, r.Remaining, r.Weights = e.steps, e.now, e.weights
+	for _, w := range e.weights {
+		r.DegreesOfFreedom += w
+	}
+	b.Stage("counting the solutions")
+	if r.Count, err = r.Initial.CountSolutions(); err != nil {
+		return nil, err
+	}
+	if r.Count.Gauge != 0 || r.Count.Solutions != 2*r.DegreesOfFreedom {
+		return nil, ErrCount
+	}
+	b.Stage("analysing what remains")
+	if err := r.analyse(); err != nil {
+		return nil, err
+	}
+	r.Assumptions = r.allAssumptions()
+	return r, nil
+}
+
+func start(m *parse.Model, initial System) *elimination {
+	e := &elimination{now: initial, taken: map[string]bool{}}
+	for _, f := range m.Fields {
+		e.fields = append(e.fields, f.Name)
+		e.taken[f.Name] = true
+	}
+	if m.Keep == nil {
+		return e
+	}
+	e.keep = m.Keep.Name
+	e.taken[e.keep] = true
+	if m.Keep.Definition != nil {
+		e.now = initial.define(e.keep, e.rename("multiplier"), m.Keep.Definition, m.Wavenumber)
+	}
+	return e
+}
+
+func (r *Result) analyse() (err error) {
+	switch len(r.Remaining.Names) {
+	case 0:
+	case 1:
+		r.Variable = r.Remaining.Names[0]
+		if r.Single, err = analyseSingle(r.Model, r.Remaining.D.At(0, 0)); err == nil {
+			r.Stability = r.Single.stability(r.Model)
+		}
+	default:
+		if r.Several, err = analyseSeveral(r.Model, r.Remaining.D); err == nil {
+			r.Stability = r.Several.stability(r.Weights)
+		}
+	}
+	return err
+}
+
+// allAssumptions joins those of the model and those of the steps, each factor once.
+func (r *Result) allAssumptions() []field.Assumption {
+	out := r.Model.K.Assumptions()
+	for _, s := range r.Steps {
+		for _, f := range s.Nonzero {
+			known := false
+			for _, a := range out {
+				known = known || a.Factor.Equal(f)
+			}
+			if !known {
+				out = append(out, field.Assumption{Factor: f, Why: s.describe() + " divides by it"})
+			}
+		}
+	}
+	return out
+}
+
+func (s Step) describe() string {
+	var names []string
+	for _, sol := range s.Solutions {
+		names = append(names, sol.Name)
+	}
+	list := strings.Join(names, " and ")
+	if s.Kind == Redefined {
+		return "the redefinition of " + list
+	}
+	return "the solution for " + list
+}

@@ -1,0 +1,98 @@
+package reduce
+
+// The quadratic form S = ½∫Φᵀ𝒟Φ of a Lagrangian.
+
+import (
+	"remnant/expr/field"
+	"remnant/expr/oper"
+	"remnant/parse"
+)
+
+// System is a quadratic form: 𝒟 = 𝒟† over K[D], with the names of the fields Φ.
+type System struct {
+	K     *field.Field
+	Names []string
+	D     oper.Matrix
+}
+
+// Quadratic writes the model's Lagrangian as a quadratic form. A term c·DᵗU·DˢV, with p and
+// q spatial derivatives, is i^p(−i)^q k^(p+q) = (−1)^((p−q)/2) k^(p+q) times as much for one
+// Fourier mode; with B_UV = (−D)ᵗ c Dˢ the form is 𝒟 = B + B†, so that S = ½∫Φᵀ𝒟Φ.
+func Quadratic(m *parse.Model) System {
+	s := System{K: m.K, D: oper.NewMatrix(len(m.Fields), len(m.Fields))}
+	for _, f := range m.Fields {
+		s.Names = append(s.Names, f.Name)
+	}
+	b := oper.NewMatrix(len(m.Fields), len(m.Fields))
+	for _, t := range m.Quadratic {
+		c := t.Coef.Mul(fourier(m.Wavenumber, t.U.Space, t.V.Space))
+		op := oper.Mono(c, t.V.Time)
+		for range t.U.Time {
+			op = op.D().Neg()
+		}
+		b.Set(t.U.Field, t.V.Field, b.At(t.U.Field, t.V.Field).Add(op))
+		m.K.Budget().Check(op.Terms())
+	}
+	s.D = b.Add(b.Adjoint())
+	return s
+}
+
+func fourier(k field.Elem, p, q int) field.Elem {
+	c := k.Pow(p + q)
+	if (p-q)/2%2 != 0 {
+		c = c.Neg()
+	}
+	return c
+}
+
+// index is the place of the field called name; −1 if there is none.
+func (s System) index(name string) int {
+	for i, n := range s.Names {
+		if n == name {
+			return i
+		}
+	}
+	return -1
+}
+
+// without is the system with the given fields taken out, rows and columns.
+func (s System) without(gone ...int) System {
+	var keep []int
+	out := System{K: s.K}
+	for i, n := range s.Names {
+		skip := false
+		for _, g := range gone {
+			skip = skip || g == i
+		}
+		if !skip {
+			keep = append(keep, i)
+			out.Names = append(out.Names, n)
+		}
+	}
+	out.D = s.D.Submatrix(keep, keep)
+	return out
+}
+
+// define adds a field u and a multiplier for λ(u − Σ terms): u is then another name for the
+// expression, and the content is unchanged because the (λ,u) block is a unit.
+func (s System) define(u, multiplier string, terms []parse.LinearTerm, k field.Elem) System {
+	n := len(s.Names)
+	out := System{K: s.K, D: oper.NewMatrix(n+2, n+2)}
+	out.Names = append(append(out.Names, s.Names...), u, multiplier)
+	for i := range n {
+		for j := range n {
+			out.D.Set(i, j, s.D.At(i, j))
+		}
+	}
+	row := make([]oper.Oper, n+1)
+	row[n] = oper.New(s.K.Int(1))
+	for _, t := range terms {
+		c := t.Coef.Mul(fourier(k, t.U.Space, 0)).Neg()
+		row[t.U.Field] = row[t.U.Field].Add(oper.Mono(c, t.U.Time))
+	}
+	for j, a := range row {
+		out.D.Set(n+1, j, a)
+		out.D.Set(j, n+1, a.Adjoint())
+	}
+	return out
+}
