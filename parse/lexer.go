@@ -238,6 +238,9 @@ func (s *scanner) token(start int, text string) int {
 
 func (s *scanner) emit(kind lexer.TokenType, start int, text string) {
 	l := &s.lines[len(s.lines)-1]
+	if l.broken {
+		return // it will not be parsed
+	}
 	number := s.src.Line(start)
 	pos := lexer.Position{Filename: s.src.Name, Offset: start, Line: number, Column: 1 + start - s.src.LineStart(number)}
 	l.tokens = append(l.tokens, lexer.Token{Type: kind, Value: text, Pos: pos})
