@@ -139,6 +139,10 @@ func (o Ops) mulTerms(b *builder, p, q operand) {
 		o.mulHeapWords(b, p, q)
 		return
 	}
+	if c, ok := arrayCut(b.lay, p.exps, q.exps); ok {
+		o.mulArray(b, p, q, c)
+		return
+	}
 	o.mulHeap(b, p, q)
 }
 
