@@ -51,17 +51,20 @@ func (e *elimination) run() error {
 // onePivot eliminates by the best pivot that does not involve field keep.
 func (e *elimination) onePivot(keep int) bool {
 	p, ok := e.now.choosePivot(keep)
-	if !ok {
-		return false
+	if ok {
+		e.apply(e.now.solve(p))
 	}
+	return ok
+}
+
+// solve eliminates by the pivot p.
+func (s System) solve(p pivot) Step {
 	if p.q < 0 {
-		e.now.K.Budget().Stage("eliminating " + e.now.Names[p.p])
-		e.apply(e.now.solveAuxiliary(p.p))
-	} else {
-		e.now.K.Budget().Stage("eliminating " + e.now.Names[p.p] + " and " + e.now.Names[p.q])
-		e.apply(e.now.solveMultiplier(p.p, p.q))
+		s.K.Budget().Stage("eliminating " + s.Names[p.p])
+		return s.solveAuxiliary(p.p)
 	}
-	return true
+	s.K.Budget().Stage("eliminating " + s.Names[p.p] + " and " + s.Names[p.q])
+	return s.solveMultiplier(p.p, p.q)
 }
 
 func (e *elimination) apply(s Step) {

@@ -31,29 +31,38 @@ func (a pivot) before(b pivot) bool {
 
 // choosePivot finds the best pivot that does not involve the field keep (−1: any may go).
 func (s System) choosePivot(keep int) (pivot, bool) {
-	best, found := pivot{}, false
-	offer := func(c pivot) {
-		if !found || c.before(best) {
-			best, found = c, true
+	all := s.pivots(keep)
+	if len(all) == 0 {
+		return pivot{}, false
+	}
+	best := all[0]
+	for _, p := range all[1:] {
+		if p.before(best) {
+			best = p
 		}
 	}
+	return best, true
+}
+
+// pivots lists every pivot that does not involve the field keep.
+func (s System) pivots(keep int) []pivot {
+	var all []pivot
 	for p := range s.Names {
 		if p == keep {
 			continue
 		}
 		switch d := s.D.At(p, p); d.Order() {
 		case 0:
-			offer(pivot{p, -1, d.Coef(0).Num().Len(), d.Coef(0).Num().TotalDegree()})
+			all = append(all, pivot{p, -1, d.Coef(0).Num().Len(), d.Coef(0).Num().TotalDegree()})
 		case -1:
 			for q := range s.Names {
-				if q == keep || q == p || s.D.At(p, q).Order() != 0 {
-					continue
+				if q != keep && q != p && s.D.At(p, q).Order() == 0 {
+					all = append(all, pairPivot(p, q, s.D.At(p, q).Coef(0)))
 				}
-				offer(pairPivot(p, q, s.D.At(p, q).Coef(0)))
 			}
 		}
 	}
-	return best, found
+	return all
 }
 
 // pairPivot rates the determinant −c² of the block; its terms are those of a square.
