@@ -38,14 +38,23 @@ func (e *elimination) run() error {
 		step, weights, found := e.now.exposeHidden(keep, e.rename)
 		if !found {
 			e.weights = weights
-			if keep >= 0 && len(e.now.Names) == 1 && e.onePivot(-1) {
-				continue // the kept field is the last one, and does not propagate either
+			if keep >= 0 && half(weights) == 0 && e.onePivot(-1) {
+				continue // nothing propagates, the kept field no more than the others
 			}
 			return nil
 		}
 		e.apply(step)
 	}
 	return nil
+}
+
+// half is ½ deg Det 𝒟 = Σmᵢ for a regular leading matrix: the degrees of freedom.
+func half(weights []int) int {
+	sum := 0
+	for _, w := range weights {
+		sum += w
+	}
+	return sum
 }
 
 // onePivot eliminates by the best pivot that does not involve field keep.

@@ -50,9 +50,7 @@ func Reduce(m *parse.Model) (r *Result, err error) {
 		return nil, err
 	}
 	r.Steps, r.Remaining, r.Weights = e.steps, e.now, e.weights
-	for _, w := range e.weights {
-		r.DegreesOfFreedom += w
-	}
+	r.DegreesOfFreedom = half(e.weights)
 	b.Stage("counting the solutions")
 	if r.Count, err = r.Initial.CountSolutions(); err != nil {
 		return nil, err
