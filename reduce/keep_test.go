@@ -1,6 +1,7 @@
 package reduce
 
 import (
+	"remnant/expr/oper"
 	"strings"
 	"testing"
 )
@@ -48,5 +49,44 @@ func TestChoosesVariable(t *testing.T) {
 	r := mustReduce(t, model(t, "turnstone.act", turnstone))
 	if r.Variable != "zeta" || r.Requested != "" {
 		t.Errorf("variable %q, requested %q", r.Variable, r.Requested)
+	}
+}
+
+// A variable that holds the velocity. For the oscillator L = ½x'² − ½w²x² it is its momentum,
+// with H = ½p² + ½w²x² read as L = ½p'²/w² − ½p² (canonical exchange, common practice); a
+// mixture x + cx' obeys the same equation of motion as x, since the coefficients are constant.
+func TestKeepVelocity(t *testing.T) {
+	const osc = "constants w > 0, c > 0\nfields x\nlagrangian quadratic = x'^2/2 - w^2*x^2/2\n"
+	m := model(t, "oystercatcher.act", osc+"keep p = x'\n")
+	r := mustReduce(t, m)
+	if r.Variable != "p" || r.DegreesOfFreedom != 1 {
+		t.Fatalf("variable %q, %d degrees of freedom", r.Variable, r.DegreesOfFreedom)
+	}
+	same(t, "kinetic", r.Single.Kinetic, eval(t, m, "1/w^2"))
+	same(t, "mass", r.Single.Mass, eval(t, m, "1"))
+
+	m = model(t, "oystercatcher.act", osc+"keep u = x + c*x'\n")
+	r = mustReduce(t, m)
+	eom := r.Single.EquationOfMotion
+	same(t, "friction", &eom[1], eval(t, m, "0"))
+	same(t, "frequency", &eom[0], eval(t, m, "w^2"))
+	same(t, "kinetic", r.Single.Kinetic, eval(t, m, "1/(1 + c^2*w^2)"))
+}
+
+// In the time-dependent case the equation of motion of u = ζ + α = ζ + ζ'/H follows from that
+// of ζ: it must vanish on u when the equation of ζ is used, which is tested by division.
+func TestKeepVelocityOfPerturbation(t *testing.T) {
+	m := model(t, "turnstone.act", turnstone+"keep u = zeta + alpha\n")
+	r := mustReduce(t, m)
+	if r.Variable != "u" || r.Single == nil {
+		t.Fatalf("variable %q", r.Variable)
+	}
+	u := oper.New(eval(t, m, "1"), eval(t, m, "1/H"))
+	zeta := oper.New(eval(t, m, "k^2/a^2"), eval(t, m, "3*H + eps'/eps"), eval(t, m, "1"))
+	if _, rest := oper.DivRight(oper.New(r.Single.EquationOfMotion...).Mul(u), zeta); !rest.IsZero() {
+		t.Errorf("the equation of u does not follow from that of ζ: %v is left", rest)
+	}
+	if !r.Remaining.D.IsSelfAdjoint() {
+		t.Error("the operator of u is not self-adjoint")
 	}
 }

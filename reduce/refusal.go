@@ -31,25 +31,29 @@ const (
 	GaugeDirection diag.Kind = "gauge direction"
 )
 
-// keptRemains refuses a kept field that carries no degree of freedom while another does: one
-// that could be solved for, had it not been kept.
-func keptRemains(m *parse.Model, initial System, e *elimination) error {
+// keptRemains looks whether the kept field carries the mode. It does not if it could be
+// solved for, had it not been kept. A new variable that holds the velocity may still take the
+// mode's place; anything else is refused, naming what propagates.
+func keptRemains(m *parse.Model, initial System, e *elimination) (*elimination, error) {
 	keep := e.now.index(e.keep)
 	if m.Keep == nil || keep < 0 || len(e.now.Names) < 2 {
-		return nil
+		return e, nil
 	}
 	if p, ok := e.now.choosePivot(-1); !ok || p.p != keep && p.q != keep {
-		return nil
+		return e, nil
 	}
 	free := &elimination{now: initial, fields: e.fields, taken: map[string]bool{}}
 	for _, n := range e.fields {
 		free.taken[n] = true
 	}
 	if err := free.run(); err != nil {
-		return err
+		return nil, err
+	}
+	if exchange(m, free) {
+		return free, nil
 	}
 	names := quoteAll(free.now.Names)
-	return diag.List{{
+	return nil, diag.List{{
 		Kind: KeptField, Source: m.Source, Span: m.Keep.Span,
 		Summary: fmt.Sprintf("'%s' does not propagate: it is fixed by the other fields", m.Keep.Name),
 		Hint:    "what propagates is " + names + "; write 'keep " + free.now.Names[0] + "'",

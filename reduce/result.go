@@ -46,7 +46,7 @@ func Reduce(m *parse.Model) (r *Result, err error) {
 	if err := e.run(); err != nil {
 		return nil, gaugeDiagnostic(m, err)
 	}
-	if err := keptRemains(m, r.Initial, e); err != nil {
+	if e, err = keptRemains(m, r.Initial, e); err != nil {
 		return nil, err
 	}
 	r.Steps, r.Remaining, r.Weights = e.steps, e.now, e.weights

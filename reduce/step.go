@@ -14,6 +14,7 @@ const (
 	Auxiliary  StepKind = iota // a field without derivatives in its own diagonal entry was solved
 	Multiplier                 // a multiplier and its partner were solved together
 	Redefined                  // fields were redefined to expose a hidden constraint
+	Exchanged                  // a new variable that holds the velocity took the mode's place
 )
 
 // Addend is Coef acting on the field Name.
