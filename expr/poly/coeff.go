@@ -80,12 +80,7 @@ func (a *acc) isZero() bool { return a.lo|a.mid|a.hi == 0 }
 // big is the value as a big integer.
 func (a acc) big() *big.Int {
 	neg := int64(a.hi) < 0
-	if neg {
-		var b uint64
-		a.lo, b = bits.Sub64(0, a.lo, 0)
-		a.mid, b = bits.Sub64(0, a.mid, b)
-		a.hi, _ = bits.Sub64(0, a.hi, b)
-	}
+	a = a.abs()
 	x := new(big.Int).SetUint64(a.hi)
 	x.Lsh(x, 64).Or(x, new(big.Int).SetUint64(a.mid))
 	x.Lsh(x, 64).Or(x, new(big.Int).SetUint64(a.lo))
@@ -93,4 +88,37 @@ func (a acc) big() *big.Int {
 		x.Neg(x)
 	}
 	return x
+}
+
+// quo is a/d if that is exact and a word coefficient. Else big tells that it is exact.
+func (a *acc) quo(d int64) (c int64, ok, big bool) {
+	if w, ok := a.word(); ok {
+		c = w / d
+		return c, c*d == w, false
+	}
+	neg := int64(a.hi) < 0
+	x := a.abs()
+	m := abs(d)
+	if x.hi == 0 && x.mid < m {
+		u, r := bits.Div64(x.mid, x.lo, m)
+		if r != 0 || u <= math.MaxInt64 {
+			if neg != (d < 0) {
+				return -int64(u), r == 0, false
+			}
+			return int64(u), r == 0, false
+		}
+	}
+	r := bits.Rem64(x.hi, x.mid, m)
+	return 0, false, bits.Rem64(r, x.lo, m) == 0
+}
+
+// abs is the magnitude.
+func (a acc) abs() acc {
+	if int64(a.hi) < 0 {
+		var b uint64
+		a.lo, b = bits.Sub64(0, a.lo, 0)
+		a.mid, b = bits.Sub64(0, a.mid, b)
+		a.hi, _ = bits.Sub64(0, a.hi, b)
+	}
+	return a
 }

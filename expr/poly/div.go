@@ -4,7 +4,6 @@
 package poly
 
 import (
-	"math"
 	"math/big"
 	"math/bits"
 )
@@ -37,8 +36,8 @@ func (o Ops) DivExact(p, q Poly) (Poly, bool) {
 	}
 	a, c := operand{pe, p.d.co, p.d.bg}, operand{qe, q.d.co, q.d.bg}
 	if a.bg == nil && c.bg == nil {
-		if r, done, ok := o.divWord(l, a, c, bound); done {
-			return r, ok
+		if r, out := o.divWord(l, a, c, bound); out != tooBig {
+			return r, out == divides
 		}
 	}
 	a.big()
@@ -141,147 +140,28 @@ func (p Poly) DivExactInt(c *big.Int) (Poly, bool) {
 	return b.poly(), true
 }
 
-// divWord divides word coefficients; done is false if the quotient has a coefficient
-// that is none.
-func (o Ops) divWord(l *layout, p, q operand, bound []uint64) (r Poly, done, ok bool) {
+// quotient is the outcome of a division of word coefficients.
+type quotient uint8
+
+const (
+	divides quotient = iota
+	fails
+	tooBig // so far it divides, but the next coefficient is no word
+)
+
+// divWord divides word coefficients, by the method that is to be expected fastest.
+func (o Ops) divWord(l *layout, p, q operand, bound []uint64) (Poly, quotient) {
 	b := newBuilder(l, 0)
-	lead := q.co[0]
-	done, ok = true, true
-	o.divRows(&b, p, q, bound, func(k int, next func() (int, int, bool)) (zero, divides bool) {
-		var a acc
-		if k >= 0 {
-			a.addWord(-p.co[k])
-		}
-		for i, j, more := next(); more; i, j, more = next() {
-			a.addMul(b.co[i], q.co[j])
-		}
-		if a.isZero() {
-			return true, true
-		}
-		c, fits := a.quo(lead)
-		if !fits {
-			x, rem := new(big.Int).QuoRem(a.big(), big.NewInt(lead), new(big.Int))
-			if rem.Sign() == 0 {
-				done = false
-			}
-			_ = x
-			return false, false
-		}
-		b.word(-c)
-		return false, true
-	}, &ok)
-	if !done || !ok {
-		return Poly{}, done, false
+	var out quotient
+	if l.words > 1 {
+		out = o.divHeapWords(&b, p, q, bound)
+	} else if c, ok := arrayDivCut(l, p.exps, q.exps, bound); ok {
+		out = o.divArray(&b, p, q, bound[0], c)
+	} else {
+		out = o.divHeap(&b, p, q, bound[0])
 	}
-	return b.canonical(), true, true
-}
-
-// quo is a/d if that is exact and a word coefficient.
-func (a *acc) quo(d int64) (int64, bool) {
-	if w, ok := a.word(); ok {
-		return w / d, w%d == 0
+	if out != divides {
+		return Poly{}, out
 	}
-	neg := int64(a.hi) < 0
-	x := *a
-	if neg {
-		var b uint64
-		x.lo, b = bits.Sub64(0, x.lo, 0)
-		x.mid, b = bits.Sub64(0, x.mid, b)
-		x.hi, _ = bits.Sub64(0, x.hi, b)
-	}
-	m := abs(d)
-	if x.hi != 0 || x.mid >= m {
-		return 0, false
-	}
-	c, r := bits.Div64(x.mid, x.lo, m)
-	if r != 0 || c > math.MaxInt64 {
-		return 0, false
-	}
-	if neg != (d < 0) {
-		return -int64(c), true
-	}
-	return int64(c), true
-}
-
-// divBig divides big coefficients.
-func (o Ops) divBig(l *layout, p, q operand, bound []uint64) (Poly, bool) {
-	b := newBuilder(l, 0)
-	var quotient []*big.Int
-	var t, rem big.Int
-	ok := true
-	o.divRows(&b, p, q, bound, func(k int, next func() (int, int, bool)) (zero, divides bool) {
-		a := new(big.Int)
-		if k >= 0 {
-			a.Set(p.bg[k])
-		}
-		for i, j, more := next(); more; i, j, more = next() {
-			a.Sub(a, t.Mul(quotient[i], q.bg[j]))
-		}
-		if a.Sign() == 0 {
-			return true, true
-		}
-		if a.QuoRem(a, q.bg[0], &rem); rem.Sign() != 0 {
-			return false, false
-		}
-		quotient = append(quotient, a)
-		b.big(a)
-		return false, true
-	}, &ok)
-	if !ok {
-		return Poly{}, false
-	}
-	return b.canonical(), true
-}
-
-// divRows drives the division on monomials of any number of words. For each monomial of
-// the remainder it calls term with the index of that monomial in p (−1 if absent) and
-// an iterator over the pairs (quotient term, divisor term) to be subtracted; term
-// appends a coefficient to the quotient unless the remainder's is zero. *ok becomes
-// false as soon as the division fails.
-func (o Ops) divRows(b *builder, p, q operand, bound []uint64, term func(int, func() (int, int, bool)) (zero, divides bool), ok *bool) {
-	w, n, m := b.lay.words, p.len(), q.len()
-	h := newRows(0, w)
-	var at []int // at[i] is the divisor term that row i of the quotient is to meet next
-	var ready []int32
-	top, e, room := make([]uint64, w), make([]uint64, w), make([]uint64, w)
-	next := func() (int, int, bool) {
-		if !h.topIs(top) {
-			return 0, 0, false
-		}
-		r := h.pop()
-		ready = append(ready, r)
-		return int(r), at[r], true
-	}
-	for k := 0; k < n || len(h.heap) > 0; {
-		in := -1
-		switch {
-		case k == n:
-			copy(top, h.mono(h.heap[0]))
-		case len(h.heap) == 0 || compareMono(p.exps[k*w:k*w+w], h.mono(h.heap[0])) >= 0:
-			copy(top, p.exps[k*w:k*w+w])
-			in, k = k, k+1
-		default:
-			copy(top, h.mono(h.heap[0]))
-		}
-		ready = ready[:0]
-		zero, divides := term(in, next)
-		if !divides || !zero && !(b.lay.divides(e, top, q.exps[:w]) && b.lay.divides(room, bound, e)) {
-			*ok = false
-			return
-		}
-		for _, r := range ready {
-			if at[r]++; at[r] < m {
-				h.push(r, b.exps[int(r)*w:int(r)*w+w], q.exps[at[r]*w:at[r]*w+w])
-			}
-		}
-		if !zero {
-			r := int32(len(at))
-			b.exps = append(b.exps, e...)
-			at = append(at, 1)
-			h.push(r, e, q.exps[w:2*w])
-			if r%checkEvery == 0 {
-				o.Budget.Check(int(r))
-			}
-		}
-	}
+	return b.canonical(), divides
 }
