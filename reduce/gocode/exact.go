@@ -79,7 +79,7 @@ func (p *point) expect(e field.Elem) (x expectation, err error) {
 		return x, err
 	}
 	x.value, x.tol = v, 2*units*0x1p-53
-	if x.tol > maxTolerance {
+	if !(x.tol <= maxTolerance) {
 		return x, unfit{"ill-conditioned"}
 	}
 	if !p.holdsFunctions(e) {
