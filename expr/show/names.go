@@ -63,8 +63,9 @@ func splitName(name string) nameParts {
 	} else if i := len(strings.TrimRight(name, "0123456789")); i < len(name) {
 		p.stem, p.index = name[:i], name[i:]
 	}
-	if rest, ok := strings.CutPrefix(p.stem, "d"); ok {
-		if _, known := letterByName[rest]; known && rest != "box" {
+	for _, prefix := range []string{"d", "delta"} {
+		rest, ok := strings.CutPrefix(p.stem, prefix)
+		if _, known := letterByName[rest]; ok && known && rest != "box" {
 			p.delta, p.stem = true, rest
 		}
 	}

@@ -125,6 +125,7 @@ func TestNames(t *testing.T) {
 	tests := []struct{ name, unicode, latex, goName, why string }{
 		{"eps", "ε", `\epsilon`, "Eps", "a Greek letter"},
 		{"dphi", "δφ", `\delta\phi`, "Dphi", "a perturbation"},
+		{"deltaphi", "δφ", `\delta\phi`, "Deltaphi", "a perturbation, as typed in Greek"},
 		{"delta", "δ", `\delta`, "Delta", "the letter, not δ of something"},
 		{"u_1", "u₁", `u_{1}`, "U1", "an index"},
 		{"eps2", "ε₂", `\epsilon_{2}`, "Eps2", "digits are an index"},
