@@ -3,7 +3,7 @@ package parse
 import (
 	"errors"
 	"fmt"
-	"math/big"
+	"slices"
 
 	"remnant/expr/budget"
 	"remnant/expr/field"
@@ -26,8 +26,10 @@ type elaborator struct {
 	names    []string                // of symbols, in the order of declaration
 	related  bool                    // the background relations are complete
 	anywhere bool                    // names may be used at any place: the text is not the model's
+	repeated map[*Statement]bool     // statements that may stand once and stand again
 	leaders  map[field.Gen]diag.Span // what the givens define
-	hasGap   bool                    // a declaration is missing, so unknown names prove nothing
+	bound    map[string]field.Elem   // in the definition of a function: its arguments
+	gap      bool                    // a declaration could not be read, so unknown names prove nothing
 }
 
 // Load parses and elaborates a source. The error is a diag.List, sorted by place, or the
@@ -35,7 +37,7 @@ type elaborator struct {
 func Load(src *diag.Source, b *budget.Budget) (*Model, error) {
 	file, faults := Parse(src)
 	e := newElaborator(file, b)
-	e.faults, e.hasGap = faults, len(faults) > 0
+	e.faults = faults
 	return e.run()
 }
 
@@ -47,7 +49,11 @@ func Elaborate(file *File, b *budget.Budget) (*Model, error) {
 
 func newElaborator(file *File, b *budget.Budget) *elaborator {
 	k := field.New(b)
-	e := &elaborator{src: file.Source, file: file, k: k, symbols: map[string]*symbol{}, leaders: map[field.Gen]diag.Span{}}
+	e := &elaborator{src: file.Source, file: file, k: k, symbols: map[string]*symbol{},
+		repeated: map[*Statement]bool{}, leaders: map[field.Gen]diag.Span{}}
+	for _, word := range file.unread {
+		e.gap = e.gap || !slices.Contains(undeclaring, word)
+	}
 	e.model = &Model{Source: file.Source, K: k, A: k.Int(1), Lapse: k.Int(1), scope: e}
 	return e
 }
@@ -82,7 +88,9 @@ func (e *elaborator) passes() {
 // each calls visit for every statement; what it refuses becomes one fault.
 func (e *elaborator) each(visit func(*Statement)) {
 	for _, s := range e.file.Statements {
-		e.try(func() { visit(s) })
+		if !e.repeated[s] {
+			e.try(func() { visit(s) })
+		}
 	}
 }
 
@@ -102,9 +110,12 @@ func (e *elaborator) try(part func()) (ok bool) {
 	return true
 }
 
+// undeclaring are the statements that declare no name.
+var undeclaring = []string{"model", "clock", "given", "gauge", "sector", "lagrangian", "keep", "small", "numbers"}
+
 // report records a fault, unless it follows from another.
 func (e *elaborator) report(f *fault) {
-	if f.Kind == "" || e.hasGap && (f.Kind == diag.UnknownName || f.Kind == diag.Missing || f.Kind == diag.FieldUnused) {
+	if f.Kind == "" || e.gap && (f.Kind == diag.UnknownName || f.Kind == diag.FieldUnused) || len(e.file.unread) > 0 && f.Kind == diag.Missing {
 		return
 	}
 	f.Source = e.src
@@ -130,6 +141,7 @@ func (e *elaborator) once() {
 			f := newFault(diag.StatementTwice, s.Keyword.Span(), fmt.Sprintf("a second %s statement", word), "one is allowed in a file")
 			f.Related = []diag.Related{{Span: old, Label: "the first one"}}
 			e.report(f)
+			e.repeated[s] = true
 			continue
 		}
 		first[word] = s.Keyword.Span()
@@ -151,251 +163,9 @@ func clockOf(word string) Clock {
 	return Cosmic
 }
 
-// builtins enters the names that need no declaration.
-func (e *elaborator) builtins() {
-	k := e.k.Wavenumber("k")
-	e.model.Wavenumber = e.k.Gen(k)
-	e.enter(&symbol{name: "k", kind: symbolBuiltin, gen: k})
-	for _, name := range []string{"pi", "t", "box"} {
-		e.enter(&symbol{name: name, kind: symbolBuiltin})
-	}
-	hasA, hasH := e.declaresBackground("a"), e.declaresBackground("H")
-	if !hasH && (hasA || e.model.Clock == Efolds) {
-		sign := field.Unknown
-		if e.model.Clock == Efolds {
-			sign = field.Positive // the lapse 1/H is
-		}
-		e.enter(&symbol{name: "H", kind: symbolBackground, gen: e.k.Function("H", sign)})
-	}
-}
-
-func (e *elaborator) declaresBackground(name string) bool {
-	for _, s := range e.file.Statements {
-		for _, b := range s.Background {
-			if b.Word.Name() == name {
-				return true
-			}
-		}
-	}
-	return false
-}
-
-// declarations enters the names that a statement declares.
-func (e *elaborator) declarations(s *Statement) {
-	switch {
-	case s.Constants != nil:
-		for _, c := range s.Constants {
-			if sym := e.declare(&c.Word, symbolConstant, s.At.End); sym != nil {
-				sym.gen = e.k.Constant(sym.name, signOf(c.Sign))
-				e.model.Constants = append(e.model.Constants, Declared{sym.name, sym.at, sym.gen})
-			}
-		}
-	case s.Background != nil:
-		for _, b := range s.Background {
-			e.declareBackground(b, s.At.End)
-		}
-	case s.Fields != nil:
-		for _, w := range s.Fields {
-			if sym := e.declare(w, symbolField, s.At.End); sym != nil {
-				sym.index = len(e.model.Fields)
-				e.model.Fields = append(e.model.Fields, FieldDecl{sym.name, sym.at})
-			}
-		}
-	case s.FormFactor != nil:
-		e.declare(&s.FormFactor.Word, symbolFormFactor, s.At.End)
-		if r := s.FormFactor.Rule; r != nil {
-			if f := oneOf(&r.Of, []string{s.FormFactor.Word.Text}); f != nil {
-				e.report(f)
-			}
-		}
-	case s.Let != nil:
-		if sym := e.declare(&s.Let.Word, symbolLet, s.At.End); sym != nil {
-			sym.let = s.Let
-		}
-	case s.Functions != nil:
-		for _, f := range s.Functions {
-			if sym := e.declare(&f.Word, symbolFunction, s.At.End); sym != nil {
-				sym.args, sym.broken = f.Arguments, true // until its arguments are known
-			}
-		}
-	}
-}
-
-func (e *elaborator) declareBackground(b *Symbol, end int) {
-	sym := e.declare(&b.Word, symbolBackground, end)
-	if sym == nil {
-		return
-	}
-	sign := signOf(b.Sign)
-	taken := sym.name == "a" || sym.name == "H" && e.model.Clock == Efolds // positive, as N̄ is
-	if taken {
-		if sign == field.Negative {
-			e.report(newFault(diag.UnknownWord, b.Word.Span(), fmt.Sprintf("'%s' is positive", b.Word.Text), "a, k and the lapse are taken to be positive"))
-		}
-		sign = field.Positive
-	}
-	sym.gen = e.k.Function(sym.name, sign)
-	e.model.Background = append(e.model.Background, Declared{sym.name, sym.at, sym.gen})
-}
-
-func signOf(mark string) field.Sign {
-	switch mark {
-	case ">":
-		return field.Positive
-	case "<":
-		return field.Negative
-	}
-	return field.Unknown
-}
-
-// functions gives the declared functions their arguments. These may be declared below:
-// the statement names them rather than uses them.
-func (e *elaborator) functions(s *Statement) {
-	e.lapse()
-	e.anywhere = true
-	defer func() { e.anywhere = false }()
-	for _, f := range s.Functions {
-		sym := e.symbols[f.Word.Name()]
-		if sym == nil || sym.kind != symbolFunction || sym.at != f.Word.Span() {
-			continue
-		}
-		e.try(func() {
-			names, args := e.arguments(f)
-			fn := e.k.FreeFunction(sym.name, names, args, field.Unknown)
-			e.model.Functions = append(e.model.Functions, FunctionDecl{Name: sym.name, Span: sym.at, Fn: fn})
-			sym.fn = &FunctionDecl{Fn: fn}
-			sym.broken = false
-		})
-	}
-}
-
-// lapse sets the scale factor and N̄.
-func (e *elaborator) lapse() {
-	m := e.model
-	if a, ok := e.symbols["a"]; ok && a.kind == symbolBackground {
-		m.A = e.k.Gen(a.gen)
-	}
-	switch m.Clock {
-	case Conformal:
-		m.Lapse = m.A
-	case Efolds:
-		if h := e.symbols["H"]; !e.k.Gen(h.gen).IsZero() {
-			m.Lapse = e.k.Gen(h.gen).Inv()
-		}
-	}
-}
-
-// arguments resolves what a function depends on.
-func (e *elaborator) arguments(f *Function) ([]string, []field.Elem) {
-	var names []string
-	var args []field.Elem
-	for _, a := range f.Arguments {
-		name := a.Word.Name()
-		if a.Of != nil {
-			name += "(" + a.Of.Name() + ")"
-		}
-		for _, old := range names {
-			if old == name {
-				panic(newFault(diag.DeclaredTwice, a.Word.Span(), fmt.Sprintf("the argument '%s' is named twice", name), "an argument is named once"))
-			}
-		}
-		names = append(names, name)
-		args = append(args, e.argument(a, f))
-	}
-	return names, args
-}
-
-func (e *elaborator) argument(a *Argument, f *Function) field.Elem {
-	name := &Name{node{a.Word.Span()}, a.Word.Text, a.Word.Name()}
-	sym, declared := e.symbols[name.Name]
-	switch {
-	case name.Name == "X" && (a.Of != nil || !declared):
-		return e.kinetic(a, f)
-	case a.Of != nil:
-		panic(newFault(diag.WrongArguments, a.Word.Span(), fmt.Sprintf("'%s' cannot be an argument of a function", a.Word.Text), "X(phi) is the only argument of this form"))
-	case name.Name == "R" && !declared:
-		return e.ricci(name.At)
-	case name.Name == "t":
-		return e.k.Gen(e.time())
-	}
-	sym = e.lookup(name)
-	if sym.kind != symbolBackground && sym.kind != symbolConstant {
-		panic(newFault(diag.WrongArguments, name.At, fmt.Sprintf("'%s' is %s and cannot be an argument of a function", name.Text, kindNames[sym.kind]),
-			"functions depend on functions of time, X, R or t"))
-	}
-	return e.k.Gen(sym.gen)
-}
-
-// kinetic is X = φ'²/(2N̄²) for the scalar that an argument names, or the only one there is.
-func (e *elaborator) kinetic(a *Argument, f *Function) field.Elem {
-	var of *Name
-	switch {
-	case a.Of != nil:
-		of = &Name{node{a.Of.Span()}, a.Of.Text, a.Of.Name()}
-	default:
-		of = e.onlyScalar(a, f)
-	}
-	sym := e.lookup(of)
-	if sym.kind != symbolBackground {
-		panic(newFault(diag.WrongArguments, of.At, fmt.Sprintf("'%s' is %s and has no kinetic term X", of.Text, kindNames[sym.kind]), "X belongs to a scalar declared in 'background'"))
-	}
-	return e.kineticOf(sym.gen)
-}
-
-func (e *elaborator) kineticOf(phi field.Gen) field.Elem {
-	return e.k.Jet(phi, 1).Div(e.model.Lapse).Pow(2).Scale(1, 2)
-}
-
-// onlyScalar finds the scalar of a bare X: the other argument, if it is one, or phi.
-func (e *elaborator) onlyScalar(x *Argument, f *Function) *Name {
-	var found []*Argument
-	for _, a := range f.Arguments {
-		if s, ok := e.symbols[a.Word.Name()]; ok && a.Of == nil && s.kind == symbolBackground && a.Word.Name() != "a" && a.Word.Name() != "H" {
-			found = append(found, a)
-		}
-	}
-	if len(found) == 1 {
-		return &Name{node{found[0].Word.Span()}, found[0].Word.Text, found[0].Word.Name()}
-	}
-	if s, ok := e.symbols["phi"]; ok && s.kind == symbolBackground && len(found) == 0 {
-		return &Name{node{x.Word.Span()}, "phi", "phi"}
-	}
-	panic(newFault(diag.WrongArguments, x.Word.Span(), "it is not clear which scalar X belongs to", "with several scalars write X(phi)"))
-}
-
-// ricci is the background value of R: 6 N̄⁻² (a”/a + a'²/a² − a'N̄'/(aN̄)).
-func (e *elaborator) ricci(at diag.Span) field.Elem {
-	a, n := e.model.A, e.model.Lapse
-	if a.IsOne() {
-		panic(newFault(diag.WrongArguments, at, "R needs the scale factor", "declare a in 'background'"))
-	}
-	h := a.D().Div(a)
-	sum := a.Dn(2).Div(a).Add(h.Pow(2)).Sub(h.Mul(n.D()).Div(n))
-	return sum.Scale(6, 1).Div(n.Pow(2))
-}
-
-// time is the generator t, cosmic time: t' = N̄.
-func (e *elaborator) time() field.Gen {
-	if g, ok := e.k.Lookup("t"); ok {
-		return g
-	}
-	t := e.k.Function("t", field.Unknown)
-	e.symbols["t"].gen = t
-	e.clockRelation("t'", e.k.JetGen(t, 1), e.model.Lapse)
-	return t
-}
-
-// constantPi is the number π.
-func (e *elaborator) constantPi() field.Elem {
-	if g, ok := e.k.Lookup("pi"); ok {
-		return e.k.Gen(g)
-	}
-	return e.k.Gen(e.k.Constant("pi", field.Positive))
-}
-
 // let checks an abbreviation and enters its value.
 func (e *elaborator) let(s *Statement) {
-	if s.Let == nil {
+	if s.Let == nil || !e.quadratic() {
 		return
 	}
 	sym := e.symbols[s.Let.Word.Name()]
@@ -416,7 +186,7 @@ func (e *elaborator) let(s *Statement) {
 
 // lagrangian reads the action.
 func (e *elaborator) lagrangian(s *Statement) {
-	if s.Lagrangian == nil || e.model.LagrangianSpan != (diag.Span{}) {
+	if s.Lagrangian == nil {
 		return
 	}
 	e.model.LagrangianSpan = s.At
@@ -466,169 +236,17 @@ func (e *elaborator) collectNames(x Expr, used map[string]bool) {
 	})
 }
 
-// rest reads what needs the names and relations to be complete.
-func (e *elaborator) rest(s *Statement) {
-	switch {
-	case s.Gauge != nil && e.quadratic():
-		panic(newFault(diag.WrongForm, s.At, "a quadratic Lagrangian has no gauge to choose", "gauge belongs to the covariant and adm forms"))
-	case s.Sector != nil && s.Sector.Text != "scalar":
-		panic(newFault(diag.NotYetSupported, s.Sector.Span(), fmt.Sprintf("the %s sector is not yet supported", s.Sector.Text), "sector scalar can be reduced"))
-	case s.Keep != nil:
-		e.keep(s)
-	case s.Small != nil:
-		e.small(s.Small)
-	case s.Numbers != nil:
-		for _, n := range s.Numbers {
-			e.try(func() { e.number(n) })
-		}
-	case s.Functions != nil:
-		for _, f := range s.Functions {
-			e.try(func() { e.definition(f) })
-		}
-	}
-}
-
-func (e *elaborator) quadratic() bool {
+// form is the word for the form of the Lagrangian.
+func (e *elaborator) form() string {
 	for _, s := range e.file.Statements {
 		if s.Lagrangian != nil {
-			return s.Lagrangian.Form.Text == "quadratic"
+			return s.Lagrangian.Form.Text
 		}
 	}
-	return true
+	return "quadratic"
 }
 
-func (e *elaborator) keep(s *Statement) {
-	w := &s.Keep.Word
-	sym := e.symbols[w.Name()]
-	if s.Keep.Definition == nil {
-		if !e.quadratic() {
-			return
-		}
-		name := &Name{node{w.Span()}, w.Text, w.Name()}
-		if sym = e.lookup(name); sym.kind != symbolField {
-			panic(newFault(diag.NotAField, w.Span(), fmt.Sprintf("'%s' is %s and cannot be kept", w.Text, kindNames[sym.kind]), "a perturbation declared in 'fields' is kept, or a new one: keep u = expression"))
-		}
-		e.model.Keep = &Keep{Name: sym.name, Span: sym.at, Field: sym.index}
-		e.model.Keep.Span = w.Span()
-		return
-	}
-	if e.declare(w, symbolField, len(e.src.Text)+1) == nil {
-		return
-	}
-	f := e.value(s.Keep.Definition.X)
-	keep := &Keep{Name: w.Name(), Span: w.Span(), Field: -1}
-	for _, t := range f.terms {
-		if t.degree != 1 {
-			panic(newFault(diag.WrongOrder, t.at, fmt.Sprintf("'%s' is of order %d in the perturbations", e.src.Slice(t.at), t.degree), "a new variable is of order 1"))
-		}
-		keep.Definition = append(keep.Definition, LinearTerm{t.coef, t.u, t.at})
-	}
-	if len(f.terms) == 0 {
-		panic(newFault(diag.WrongOrder, s.Keep.Definition.X.Span(), "the new variable is zero", "a new variable is of order 1 in the perturbations"))
-	}
-	e.model.Keep = keep
-}
-
-// maxSeriesOrder bounds the order that a file may ask series to be carried to.
-const maxSeriesOrder = 100
-
-func (e *elaborator) small(c *SmallClause) {
-	for _, w := range c.Names {
-		sym := e.lookup(&Name{node{w.Span()}, w.Text, w.Name()})
-		if sym.kind != symbolConstant && sym.kind != symbolBackground {
-			panic(newFault(diag.NotASymbol, w.Span(), fmt.Sprintf("'%s' is %s and cannot be small", w.Text, kindNames[sym.kind]), "a constant or a function of time is small"))
-		}
-		for _, g := range e.model.Small {
-			if g == sym.gen {
-				panic(newFault(diag.DeclaredTwice, w.Span(), fmt.Sprintf("'%s' is named twice", w.Text), "a parameter is named once"))
-			}
-		}
-		e.model.Small = append(e.model.Small, sym.gen)
-	}
-	order := c.Order
-	n, ok := new(big.Int).SetString(order.Text, 10)
-	if !ok || n.Cmp(big.NewInt(maxSeriesOrder)) > 0 {
-		at := diag.Span{Start: order.Pos.Offset, End: order.Pos.Offset + len(order.Text)}
-		panic(newFault(diag.BadExponent, at, fmt.Sprintf("'%s' is no order of a series", order.Text), "a whole number up to 100 is expected"))
-	}
-	e.model.SmallOrder = int(n.Int64())
-}
-
-// number reads the value of a constant, or an initial value.
-func (e *elaborator) number(eq *Equation) {
-	left, initial := eq.Left.X, false
-	if c, ok := left.(*Call); ok {
-		zero, isNumber := c.Args[0].(*Number)
-		if len(c.Args) != 1 || !isNumber || zero.Value.Sign() != 0 {
-			panic(newFault(diag.WrongArguments, c.Args[0].Span(), "initial values are given at 0", "the form is: phi(0) = 27/5"))
-		}
-		left, initial = c.Fun, true
-	}
-	g, ok := e.symbolGen(left)
-	if !ok {
-		panic(newFault(diag.NotASymbol, left.Span(), fmt.Sprintf("'%s' has no value of its own", String(left)), "the forms are: M = 1 for a constant, phi(0) = 27/5 for an initial value"))
-	}
-	if isConstant := e.k.Info(g).Kind == field.Constant; isConstant == initial {
-		hint := fmt.Sprintf("an initial value is written %s(0)", String(left))
-		if isConstant {
-			hint = "a constant has its value at all times: " + String(left) + " = …"
-		}
-		panic(newFault(diag.NotASymbol, eq.Left.X.Span(), fmt.Sprintf("'%s' cannot be given like this", String(eq.Left.X)), hint))
-	}
-	for _, old := range e.model.Numbers {
-		if old.Gen == g {
-			f := newFault(diag.DeclaredTwice, eq.Left.X.Span(), fmt.Sprintf("'%s' has two values", String(eq.Left.X)), "one value is allowed")
-			f.Related = []diag.Related{{Span: old.Span, Label: "the first one"}}
-			panic(f)
-		}
-	}
-	e.model.Numbers = append(e.model.Numbers, NumberDecl{g, initial, e.numeric(eq.Right.X), eq.Span()})
-}
-
-// numeric evaluates an expression that must be a number.
-func (e *elaborator) numeric(x Expr) field.Elem {
-	v := e.background(x, "a value")
-	for _, g := range v.Gens() {
-		if !e.isNumber(g) {
-			panic(newFault(diag.NotANumber, x.Span(), fmt.Sprintf("'%s' is no number", String(x)), "a value is made of numbers, pi and roots"))
-		}
-	}
-	return v
-}
-
-// isNumber reports whether a generator stands for a real number: π, a root or a function
-// of such.
-func (e *elaborator) isNumber(g field.Gen) bool {
-	info := e.k.Info(g)
-	switch info.Kind {
-	case field.Constant:
-		return info.Name == "pi"
-	case field.Root, field.Elementary:
-		for _, h := range info.Arg.Gens() {
-			if !e.isNumber(h) {
-				return false
-			}
-		}
-		return true
-	}
-	return false
-}
-
-// definition evaluates the definition of a function on the background.
-func (e *elaborator) definition(f *Function) {
-	sym := e.symbols[f.Word.Name()]
-	if f.Definition == nil || sym == nil || sym.kind != symbolFunction || sym.at != f.Word.Span() || sym.broken {
-		return
-	}
-	e.anywhere = true // as its arguments, which the definition is made of
-	defer func() { e.anywhere = false }()
-	value := e.background(f.Definition.X, "the definition of a function")
-	for i := range e.model.Functions {
-		if d := &e.model.Functions[i]; d.Name == sym.name {
-			d.Definition, d.Value = f.Definition.X, value
-		}
-	}
-}
+func (e *elaborator) quadratic() bool { return e.form() == "quadratic" }
 
 // complete refuses a model that lacks a part.
 func (e *elaborator) complete() {
@@ -641,37 +259,6 @@ func (e *elaborator) complete() {
 	if len(m.Fields) == 0 && e.quadratic() {
 		e.report(newFault(diag.Missing, m.LagrangianSpan, "the model has no fields", "a line is missing above: fields zeta"))
 	}
-}
-
-// Assignment is a value that a point gives to a generator.
-type Assignment struct {
-	Gen   field.Gen
-	Name  string     // as the point spells it
-	Value field.Elem // a number
-	Span  diag.Span
-}
-
-// Point reads a point of the model: values of constants, k and jets. The error is a
-// diag.List about the point's own text, or a *budget.Stop.
-func (m *Model) Point(src *diag.Source) (list []Assignment, err error) {
-	defer budget.Catch(&err)
-	points, faults := Points(src)
-	e := *m.scope
-	e.src, e.faults, e.anywhere = src, faults, true
-	for _, p := range points {
-		e.try(func() {
-			g, ok := e.symbolGen(p.Name)
-			if !ok {
-				panic(newFault(diag.NotASymbol, p.Name.Span(), fmt.Sprintf("'%s' cannot be given a value", String(p.Name)), "values are given to constants, k and functions of time with their derivatives"))
-			}
-			list = append(list, Assignment{g, String(p.Name), e.numeric(p.Value), p.At})
-		})
-	}
-	e.faults.Sort()
-	if err := e.faults.Err(); err != nil {
-		return nil, err
-	}
-	return list, nil
 }
 
 // domainFault puts an error of the algebra about a function's argument at its place.

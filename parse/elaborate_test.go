@@ -44,15 +44,9 @@ func factorText(m *Model, f Factor) string {
 // equal checks that an element of the model is the one that an expression spells.
 func equal(t *testing.T, m *Model, what string, got field.Elem, spelled string) {
 	t.Helper()
-	e := *m.scope
-	e.src, e.anywhere = diag.NewSource("spelled.act", "let x = "+spelled), true
-	file, list := Parse(e.src)
-	if len(list) > 0 {
-		t.Fatal(list)
-	}
-	var want field.Elem
-	if !e.try(func() { want = e.background(file.Statements[0].Let.Value.X, "a test") }) {
-		t.Fatal(e.faults)
+	want, err := m.Evaluate(diag.NewSource("spelled", spelled))
+	if err != nil {
+		t.Fatal(err)
 	}
 	if !got.Equal(want) {
 		t.Errorf("%s is %v, expected %v", what, got, want)
@@ -77,6 +71,8 @@ func TestQuadraticForms(t *testing.T) {
 		{"the zeroth power is one", "u^0*b^0*v^2", "1: v0,0 v0,0"},
 		{"k is a constant", "(k*u)'*k*u'", "k^2: u1,0 u1,0"},
 		{"an index within a power", "(u,i)^2 + v,i^2", "1: u0,1 u0,1; 1: v0,1 v0,1"},
+		{"pi is a constant", "(pi*u)'*u/π", "1: u0,0 u1,0"},
+		{"sums of squares of roots", "(1 + sqrt(2))^2*u^2 - 2*√2*u^2", "3: u0,0 u0,0"},
 		{"factorials and decimals", "3!*u^2 + 0.5*v^2", "6: u0,0 u0,0; (1)/2: v0,0 v0,0"},
 	} {
 		m := load(t, head+"lagrangian quadratic = "+c.lagrangian+" + 0*u*v")
@@ -196,12 +192,14 @@ func TestFunctions(t *testing.T) {
 constants m > 0
 background a, phi, chi
 fields u
+let y = Q(chi, X(chi), X(phi))*X(chi) + sin(phi)^2 + cos(phi)^2
 lagrangian quadratic = P,X,X*u'^2 + P(φ, X)*u^2 + P'*u*u' + (V(phi),phi)*u*u'' + X*u'*u''`)
 	equal(t, m, "P,X,X", m.Quadratic[0].Coef, "(P,X),X")
 	equal(t, m, "P(phi, X)", m.Quadratic[1].Coef, "P")
 	equal(t, m, "P'", m.Quadratic[2].Coef, "P,phi*phi' + P,X*phi'*phi''")
 	equal(t, m, "V,phi", m.Quadratic[3].Coef, "V,phi")
 	equal(t, m, "X", m.Quadratic[4].Coef, "phi'^2/2")
+	equal(t, m, "X(chi)", m.Lets[0].Value, "Q*chi'^2/2 + 1")
 	equal(t, m, "the definition of V", m.Functions[1].Value, "m^2*phi^2/2")
 	if m.Functions[0].Definition != nil || m.Functions[1].Definition == nil {
 		t.Error("V is defined and P is not")
@@ -209,6 +207,12 @@ lagrangian quadratic = P,X,X*u'^2 + P(φ, X)*u^2 + P'*u*u' + (V(phi),phi)*u*u'' 
 	if names := fmt.Sprint(m.Functions[2].Fn.ArgNames); names != "[chi X(chi) X(phi)]" {
 		t.Errorf("the arguments of Q are %s", names)
 	}
+}
+
+func TestDefinitionsOfTheirArguments(t *testing.T) {
+	m := load(t, "background a, phi\nconstants m\nfunctions f(R) = R + R^2/(6*m^2), P(phi, X) = X^2/m - phi\nfields u\nlagrangian quadratic = f*P*u'^2")
+	equal(t, m, "f", m.Functions[0].Value, "6*(H' + 2*H^2) + 6*(H' + 2*H^2)^2/m^2")
+	equal(t, m, "P", m.Functions[1].Value, "phi'^4/(4*m) - phi")
 }
 
 func TestAbbreviations(t *testing.T) {

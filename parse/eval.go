@@ -15,7 +15,7 @@ import (
 
 // Limits on what an expression may ask for.
 const (
-	maxOrder = 64     // of a derivative
+	maxOrder = 32     // of a derivative
 	maxBits  = 200000 // of a power's coefficients
 )
 
@@ -83,6 +83,9 @@ func (e *elaborator) evalName(n *Name) form {
 		if n.Name == f {
 			panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' needs an argument", n.Text), "the form is: "+n.Text+"(x)"))
 		}
+	}
+	if v, ok := e.bound[n.Name]; ok {
+		return background(v, n.At)
 	}
 	if _, ok := e.symbols[n.Name]; !ok && n.Name == "X" {
 		if phi, ok := e.symbols["phi"]; ok && phi.kind == symbolBackground {
@@ -313,7 +316,7 @@ func (e *elaborator) evalFactorial(n *Factorial) form {
 
 func (e *elaborator) limitOrder(n int, at diag.Span) {
 	if n > maxOrder {
-		panic(newFault(diag.OrderTooHigh, at, fmt.Sprintf("a derivative of order %d is too high", n), "derivatives up to order 64 are read"))
+		panic(newFault(diag.OrderTooHigh, at, fmt.Sprintf("a derivative of order %d is too high", n), "derivatives up to order 32 are read"))
 	}
 }
 
@@ -382,237 +385,4 @@ func (e *elaborator) notAnIndex(n *Deriv) *fault {
 		}
 	}
 	return newFault(diag.NotAnIndex, n.Label.At, fmt.Sprintf("'%s' cannot be differentiated by '%s'", String(n), n.Label.Text), hint)
-}
-
-// functionOf returns the free function that x is, or is a partial derivative of.
-func (e *elaborator) functionOf(x Expr) *symbol {
-	switch n := x.(type) {
-	case *Paren:
-		return e.functionOf(n.X)
-	case *Name:
-		if s := e.symbols[n.Name]; s != nil && s.kind == symbolFunction {
-			return e.lookup(n)
-		}
-	case *Deriv:
-		if n.Mark == "," {
-			return e.functionOf(n.X)
-		}
-	case *Call:
-		return e.functionOf(n.Fun)
-	}
-	return nil
-}
-
-// byArgument reports whether a derivative is one by an argument of a function.
-func (e *elaborator) byArgument(n *Deriv) bool {
-	s := e.functionOf(n.X)
-	return n.Mark == "," && s != nil && argumentIndex(s, n.Label.Name) >= 0
-}
-
-// argumentIndex finds an argument by name; X finds X(phi) where there is but one.
-func argumentIndex(s *symbol, name string) int {
-	found := -1
-	for i, a := range s.args {
-		switch {
-		case a.Word.Name() != name:
-		case found >= 0:
-			return -1
-		default:
-			found = i
-		}
-	}
-	return found
-}
-
-// partial returns the function and how often it is differentiated by each argument.
-func (e *elaborator) partial(x Expr) (*symbol, []int) {
-	switch n := x.(type) {
-	case *Paren:
-		return e.partial(n.X)
-	case *Call:
-		s, index := e.partial(n.Fun)
-		e.checkArguments(n, s)
-		return s, index
-	case *Deriv:
-		s, index := e.partial(n.X)
-		i := argumentIndex(s, n.Label.Name)
-		if i < 0 {
-			panic(e.notAnIndex(n))
-		}
-		index[i]++
-		e.limitOrder(index[i], n.At)
-		return s, index
-	}
-	s := e.lookup(x.(*Name))
-	return s, make([]int, len(s.args))
-}
-
-// callee returns the free function that a call names, or nil.
-func (e *elaborator) callee(n *Call) *symbol {
-	x := n.Fun
-	for {
-		switch m := x.(type) {
-		case *Prime:
-			x = m.X
-		case *Deriv:
-			x = m.X
-		case *Name:
-			if s := e.symbols[m.Name]; s != nil && s.kind == symbolFunction {
-				return e.lookup(m)
-			}
-			return nil
-		default:
-			return nil
-		}
-	}
-}
-
-// checkArguments refuses a call with other arguments than those declared.
-func (e *elaborator) checkArguments(n *Call, s *symbol) {
-	declared := s.fn.Fn.ArgNames
-	ok := len(n.Args) == len(declared)
-	for i := 0; ok && i < len(declared); i++ {
-		ok = argumentName(n.Args[i]) == declared[i]
-	}
-	if ok {
-		return
-	}
-	want := s.name + "("
-	for i, a := range declared {
-		if i > 0 {
-			want += ", "
-		}
-		want += a
-	}
-	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' has other arguments than those declared", String(n)),
-		fmt.Sprintf("functions stand for their values on the background: %s) or %s", want, s.name)))
-}
-
-// argumentName is the canonical text of an argument: phi or X(phi).
-func argumentName(x Expr) string {
-	switch n := x.(type) {
-	case *Name:
-		return n.Name
-	case *Call:
-		if f, ok := n.Fun.(*Name); ok && len(n.Args) == 1 {
-			return f.Name + "(" + argumentName(n.Args[0]) + ")"
-		}
-	}
-	return ""
-}
-
-// evalCall is an elementary function, or a free function with its arguments written out.
-func (e *elaborator) evalCall(n *Call) form {
-	if s := e.callee(n); s != nil {
-		e.checkArguments(n, s)
-		return e.eval(n.Fun)
-	}
-	name, isName := n.Fun.(*Name)
-	if isName {
-		for _, f := range elementaryNames {
-			if name.Name == f {
-				return e.elementary(n, f)
-			}
-		}
-		if name.Name == "X" && len(n.Args) == 1 {
-			return e.kineticCall(n)
-		}
-	}
-	e.eval(n.Fun) // an unknown name or a form factor has its own message
-	panic(newFault(diag.NotAFunction, n.At, fmt.Sprintf("'%s' is not declared as a function", String(n.Fun)),
-		"multiplication is written: "+shorten(String(n.Fun))+"*(…)"))
-}
-
-func (e *elaborator) kineticCall(n *Call) form {
-	if phi, ok := n.Args[0].(*Name); ok {
-		if s := e.lookup(phi); s.kind == symbolBackground {
-			return background(e.kineticOf(s.gen), n.At)
-		}
-	}
-	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' is no kinetic term", String(n)), "the form is X(phi) with a scalar declared in 'background'"))
-}
-
-func (e *elaborator) elementary(n *Call, name string) form {
-	if len(n.Args) != 1 {
-		panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' takes one argument", name), "the form is: "+name+"(x)"))
-	}
-	v, ok := e.eval(n.Args[0]).elem()
-	if !ok {
-		panic(newFault(diag.NotBackground, n.Args[0].Span(), fmt.Sprintf("'%s' is a perturbation and cannot stand in an elementary function", String(n.Args[0])), "constants and functions of time stand here"))
-	}
-	out, err := e.k.Elementary(name, v)
-	if err != nil {
-		panic(domainFault(err, n.At))
-	}
-	return background(out, n.At)
-}
-
-// apply lets an operator act on f. Factors compose, the last one acts first.
-func (e *elaborator) apply(operator Expr, f form) form {
-	if !hasBox(operator) {
-		panic(newFault(diag.NotAnOperator, operator.Span(), fmt.Sprintf("'%s' is no operator", String(operator)), "an operator contains box: (box - m^2)[zeta]; elsewhere brackets are round"))
-	}
-	return e.act(operator, f)
-}
-
-// act lets one factor or term of an operator act on f.
-func (e *elaborator) act(x Expr, f form) form {
-	if !hasBox(x) {
-		return e.mul(e.eval(x), f, x.Span())
-	}
-	switch n := x.(type) {
-	case *Name:
-		g := f.box(e.model.A, e.model.Lapse)
-		e.limitJets(g, n.At)
-		return g
-	case *Paren:
-		return e.act(n.X, f)
-	case *Sign:
-		g := e.act(n.X, f)
-		if n.Minus {
-			g = g.scale(e.k.Int(-1))
-		}
-		return g
-	case *Sum:
-		var c collector
-		for _, t := range n.Terms {
-			g := e.act(t.X, f)
-			if t.Minus {
-				g = g.scale(e.k.Int(-1))
-			}
-			c.addForm(g)
-		}
-		return c.form()
-	case *Product:
-		for i := len(n.Factors) - 1; i >= 0; i-- {
-			o := n.Factors[i]
-			switch {
-			case !o.Over:
-				f = e.act(o.X, f)
-			case hasBox(o.X):
-				panic(newFault(diag.NotYetSupported, o.X.Span(), "an operator in a denominator is not yet supported", "sums, products and powers of box can be used"))
-			default:
-				f = f.scale(e.divisor(o.X, "the model divides by it"))
-			}
-		}
-		return f
-	case *Power:
-		if !hasBox(n.Exponent) {
-			return e.actPower(n, f)
-		}
-	}
-	panic(newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("the operator '%s' is not yet supported", shorten(String(x))), "sums, products and powers of box can be used"))
-}
-
-func (e *elaborator) actPower(n *Power, f form) form {
-	r := e.exponent(n.Exponent)
-	if !r.IsInt() || r.Sign() < 0 {
-		panic(newFault(diag.NotYetSupported, n.Exponent.Span(), "powers of operators other than whole ones are not yet supported", "box^2[zeta] acts twice"))
-	}
-	e.limitPower(r.Num(), n)
-	e.limitOrder(2*int(r.Num().Int64()), n.At)
-	for range r.Num().Int64() {
-		f = e.act(n.Base, f)
-	}
-	return f
 }

@@ -50,7 +50,8 @@ func Examples() []Example {
 		{"Power", "phi^(3/2)"},
 		{"Exponent", "-2"},
 		{"Postfix", "(a^2*zeta')'"},
-		{"Primary", "P(phi, X)"},
+		{"Primary", "V,phi(phi)'"},
+		{"Arguments", "(phi, X)"},
 		{"Suffix", ",ij"},
 		{"Item", "(V,phi) + 1/2"},
 		{"ItemProduct", "2*(V,phi)"},
@@ -59,6 +60,7 @@ func Examples() []Example {
 		{"ItemPower", "10^6"},
 		{"ItemExponent", "-6"},
 		{"ItemPostfix", "phi'"},
+		{"ItemPrimary", "phi'(0)"},
 		{"ItemSuffix", "'"},
 	}
 }

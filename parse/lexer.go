@@ -70,6 +70,14 @@ func (l *line) span() diag.Span {
 	return diag.Span{Start: l.tokens[0].Pos.Offset, End: l.end.Offset}
 }
 
+// first is the first word of the line, empty if it has none.
+func (l *line) first() string {
+	if len(l.tokens) == 0 {
+		return ""
+	}
+	return l.tokens[0].Value
+}
+
 // lexer returns the tokens of the line as a participle lexer.
 func (l *line) lexer() lexer.Lexer { return &lineLexer{line: l} }
 

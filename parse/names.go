@@ -2,6 +2,7 @@ package parse
 
 import (
 	"fmt"
+	"slices"
 
 	"remnant/expr/field"
 	"remnant/parse/diag"
@@ -49,20 +50,21 @@ var elementaryNames = []string{"sqrt", "exp", "log", "sin", "cos", "tanh"}
 // reservedNames may not be declared; H may, as a function of time.
 var reservedNames = append([]string{"k", "box", "pi", "t", "H"}, elementaryNames...)
 
-func reserved(name string) bool {
-	for _, r := range reservedNames {
-		if r == name {
-			return true
-		}
-	}
-	return false
+// formNames are reserved in a form of the Lagrangian beside those above.
+var formNames = map[string][]string{
+	"covariant": {"R", "Ric", "Riem", "Weyl", "G", "X"},
+	"adm":       {"N", "K", "R3", "Vn", "acc"},
+}
+
+func (e *elaborator) reserved(name string) bool {
+	return slices.Contains(reservedNames, name) || slices.Contains(formNames[e.form()], name)
 }
 
 // declare enters a name. It returns nil, with the fault recorded, if that is not allowed.
 func (e *elaborator) declare(w *Word, kind symbolKind, end int) *symbol {
 	name := w.Name()
-	if reserved(name) && !(name == "H" && kind == symbolBackground) {
-		e.report(newFault(diag.Reserved, w.Span(), fmt.Sprintf("'%s' is reserved and cannot be declared", w.Text), reservedHint(name)))
+	if e.reserved(name) && !(name == "H" && kind == symbolBackground) {
+		e.report(newFault(diag.Reserved, w.Span(), fmt.Sprintf("'%s' is reserved and cannot be declared", w.Text), e.reservedHint(name)))
 		return nil
 	}
 	if old, ok := e.symbols[name]; ok && old.at != (diag.Span{}) {
@@ -76,7 +78,7 @@ func (e *elaborator) declare(w *Word, kind symbolKind, end int) *symbol {
 	return s
 }
 
-func reservedHint(name string) string {
+func (e *elaborator) reservedHint(name string) string {
 	switch name {
 	case "k":
 		return "k is the comoving wave number"
@@ -89,7 +91,10 @@ func reservedHint(name string) string {
 	case "H":
 		return "H is the expansion rate; declare it in 'background' if it is a function of its own"
 	}
-	return name + " is an elementary function"
+	if slices.Contains(elementaryNames, name) {
+		return name + " is an elementary function"
+	}
+	return fmt.Sprintf("%s is a quantity of the %s form", name, e.form())
 }
 
 func (e *elaborator) enter(s *symbol) {

@@ -68,12 +68,14 @@ func Parse(src *diag.Source) (*File, diag.List) {
 	for i := range lines {
 		l := &lines[i]
 		if l.broken || len(l.tokens) == 0 {
+			file.unread = append(file.unread, l.first())
 			continue
 		}
 		statement, err := parseLine(l)
 		if err != nil {
 			err.Source = src
 			faults = append(faults, err.Diagnostic)
+			file.unread = append(file.unread, l.first())
 			continue
 		}
 		file.Statements = append(file.Statements, statement)
@@ -166,6 +168,10 @@ func checkWords(s *Statement) *fault {
 		return oneOf(s.Sector, sectorWords)
 	case s.Lagrangian != nil:
 		return oneOf(&s.Lagrangian.Form, formWords)
+	case s.Small != nil:
+		if o := s.Small.Order; strings.Trim(o.Text, "0123456789") != "" {
+			return newFault(diag.StatementForm, o.Span(), "'"+o.Text+"' is no order of a series", "a whole number is expected")
+		}
 	case s.FormFactor != nil:
 		return oneOf(&s.FormFactor.Argument, []string{"box"})
 	}
@@ -183,78 +189,4 @@ func oneOf(w *Word, words []string) *fault {
 		expected = strings.Join(words[:len(words)-1], ", ") + " or " + expected
 	}
 	return newFault(diag.UnknownWord, w.Span(), "'"+w.Text+"' is not known here", expected+" is expected")
-}
-
-// Point is one assignment of a point: name = value.
-type Point struct {
-	Name, Value Expr
-	At          diag.Span
-}
-
-// Points reads the assignments of a point, split at semicolons or one on a line; here a
-// semicolon is no derivative, and blanks at the beginning of a line mean nothing.
-func Points(src *diag.Source) ([]Point, diag.List) {
-	s := &scanner{src: src, flat: true}
-	s.scan()
-	var list []Point
-	for i := range s.lines {
-		l := &s.lines[i]
-		if l.broken || len(l.tokens) == 0 {
-			continue
-		}
-		points, err := pointLine(l)
-		if err != nil {
-			err.Source = src
-			s.faults = append(s.faults, err.Diagnostic)
-		}
-		list = append(list, points...)
-	}
-	return list, firstOfEach(s.faults, s.lines)
-}
-
-// pointLine reads the assignments of one line.
-func pointLine(l *line) ([]Point, *fault) {
-	lex, err := lexer.Upgrade(l.lexer())
-	if err != nil {
-		return nil, newFault(diag.UnexpectedToken, l.span(), err.Error(), "")
-	}
-	var list []Point
-	for !lex.Peek().EOF() {
-		point, err := pointItem(lex)
-		if err != nil {
-			return list, err
-		}
-		list = append(list, point)
-		t := lex.Peek()
-		if t.EOF() {
-			break
-		}
-		if t.Value != ";" {
-			return list, newFault(diag.PointForm, tokenSpan(t), "'"+t.Value+"' cannot stand here", "a semicolon or the end of the line is expected")
-		}
-		lex.Next()
-	}
-	return list, nil
-}
-
-// pointItem reads name = value.
-func pointItem(lex *lexer.PeekingLexer) (Point, *fault) {
-	var sides [2]Expr
-	for i := range sides {
-		x, err := parseExpr(lex, true, false)
-		var f *fault
-		if errors.As(err, &f) {
-			return Point{}, f
-		}
-		sides[i] = x
-		if i > 0 {
-			break
-		}
-		if t := lex.Peek(); t.Value != "=" {
-			at := tokenSpan(t)
-			return Point{}, newFault(diag.PointForm, at, "a value is missing", "the form is: H = 1/10; phi' = 1/3")
-		}
-		lex.Next()
-	}
-	return Point{sides[0], sides[1], sides[0].Span().Join(sides[1].Span())}, nil
 }

@@ -80,9 +80,6 @@ func isNamePart(r rune) bool {
 // isIndexLetter reports whether a letter may be an index over space.
 func isIndexLetter(r rune) bool { return 'i' <= r && r <= 'n' || 'p' <= r && r <= 's' }
 
-// isSpacetimeLetter reports whether a letter may be an index over space-time.
-func isSpacetimeLetter(r rune) bool { return 'a' <= r && r <= 'h' }
-
 // nearest returns the candidate that is fewest edits away from name, if it is near
 // enough to be a slip of the pen: at most a third of the letters, at least one. Of
 // equals the first wins.

@@ -17,6 +17,8 @@ type File struct {
 	Source     *diag.Source
 	Statements []*Statement
 	Comments   []Comment
+
+	unread []string // the first words of the lines that could not be read
 }
 
 // Statement is one logical line; exactly one of the pointers and lists is set.
@@ -133,6 +135,11 @@ type SmallClause struct {
 type Whole struct {
 	Pos  lexer.Position
 	Text string `parser:"@Number"`
+}
+
+// Span is the place of the number.
+func (w *Whole) Span() diag.Span {
+	return diag.Span{Start: w.Pos.Offset, End: w.Pos.Offset + len(w.Text)}
 }
 
 // Equation is name = value in a list: phi'(0) = -1/10^6.

@@ -20,7 +20,7 @@ var madeByTests = map[diag.Kind]func() (string, func(*diag.Source) error){
 	diag.NotUTF8:  func() (string, func(*diag.Source) error) { return "model \"\xff\"", load },
 	diag.TooDeep:  func() (string, func(*diag.Source) error) { return "let x = " + strings.Repeat("(", 1001), load },
 	diag.OrderTooHigh: func() (string, func(*diag.Source) error) {
-		return "fields u\nkeep v = u" + strings.Repeat("'", 65), load
+		return "fields u\nkeep v = u" + strings.Repeat("'", 33), load
 	},
 	diag.PointForm: func() (string, func(*diag.Source) error) {
 		return "H", func(s *diag.Source) error { _, faults := parse.Points(s); return faults.Err() }
