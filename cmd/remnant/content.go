@@ -1,0 +1,473 @@
+package main
+
+// What the page of a reduction says, section by section.
+
+import (
+	"fmt"
+	"path/filepath"
+	"strings"
+
+	"remnant/expr/field"
+	"remnant/expr/show"
+	"remnant/parse"
+	"remnant/reduce"
+)
+
+// findings is a reduction with what the command line asked for beside it.
+type findings struct {
+	*reduce.Result
+	expansions []*reduce.Expansion
+	values     *reduce.Values
+	steps      bool // show the action after each step
+}
+
+// pageOf writes the page.
+func pageOf(f *findings) *page {
+	p := &page{title: f.Model.Title, head: f.head()}
+	if p.title == "" {
+		name := filepath.Base(f.Model.Source.Name)
+		p.title = strings.TrimSuffix(name, filepath.Ext(name))
+	}
+	for _, s := range []*section{f.solved(), f.remains(), f.series(), f.atPoint()} {
+		if s != nil {
+			p.sections = append(p.sections, *s)
+		}
+	}
+	return p
+}
+
+// clockName is the clock's symbol.
+func clockName(c parse.Clock) string {
+	return [...]string{parse.Cosmic: "t", parse.Conformal: "eta", parse.Efolds: "N"}[c]
+}
+
+func (f *findings) head() []row {
+	symbol := maths(show.Symbol(clockName(f.Model.Clock), 0))
+	kind := [...]string{parse.Cosmic: "cosmic", parse.Conformal: "conformal", parse.Efolds: "e-folds"}[f.Model.Clock]
+	rows := []row{{label: words("clock"), value: join("", symbol, words(" ("+kind+"), prime = d/d"), symbol)}}
+	var relations, assumed []phrase
+	for _, r := range f.Model.K.Rules() {
+		relations = append(relations, compare(show.Generator(f.Model.K, r.Leader), equals, show.Elem(r.Value)))
+	}
+	for _, a := range f.Assumptions {
+		op := unequal
+		if a.Positive {
+			op = greater
+		}
+		assumed = append(assumed, compare(show.Elem(a.Factor), op, show.Int(0)))
+	}
+	if len(relations) > 0 {
+		rows = append(rows, row{label: words("relations"), value: join(",  ", relations...)})
+	}
+	if len(assumed) > 0 {
+		rows = append(rows, row{label: words("assumed"), value: join(",  ", assumed...)})
+	}
+	return rows
+}
+
+// solved lists the steps of the elimination.
+func (f *findings) solved() *section {
+	if len(f.Steps) == 0 {
+		return nil
+	}
+	s := &section{heading: words("Solved")}
+	var rows []row
+	number := 0
+	for _, st := range f.Steps {
+		for _, sol := range st.Solutions {
+			number++
+			rows = append(rows, solutionRow(f.Model, st, sol, number))
+		}
+		if f.steps {
+			s.blocks = append(s.blocks, block{rows: rows}, f.actionBlock(st.After))
+			rows = nil
+		}
+	}
+	if rows != nil {
+		s.blocks = append(s.blocks, block{rows: rows})
+	}
+	return s
+}
+
+func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int) row {
+	left, sum := withoutInverseLaplacian(m, sol)
+	r := row{number: number, label: maths(left), value: compare(nil, equals, reduce.SumNode(sum))}
+	r.note = words("redefines it, to expose a hidden constraint")
+	if st.Kind != reduce.Redefined {
+		r.note = join("", words("from the "), maths(show.Symbol(sol.Equation, 0)), words(" equation"))
+	}
+	var needs []phrase
+	for _, x := range st.Nonzero {
+		needs = append(needs, compare(show.Elem(x), unequal, show.Int(0)))
+	}
+	if len(needs) > 0 {
+		r.note = join(", needs ", r.note, list(needs))
+	}
+	return r
+}
+
+// withoutInverseLaplacian moves powers of 1/k² in a solution to the left: ∂²ψ = … .
+func withoutInverseLaplacian(m *parse.Model, sol reduce.Solution) (show.Node, []reduce.Addend) {
+	plain := show.Symbol(sol.Name, 0)
+	k := m.Wavenumber.Num().Vars()[0]
+	power := 0
+	for _, a := range sol.Sum {
+		for i := 0; i <= a.Coef.Order(); i++ {
+			if c := a.Coef.Coef(i).Lowest(); !c.IsZero() {
+				power = max(power, c.Den().MinDegree(k))
+			}
+		}
+	}
+	if power == 0 || power%2 != 0 {
+		return plain, sol.Sum
+	}
+	laplacian := m.Wavenumber.Pow(2).Neg().Pow(power / 2)
+	var out []reduce.Addend
+	for _, a := range sol.Sum {
+		moved := a.Coef.Map(func(c field.Elem) field.Elem { return c.Mul(laplacian).Lowest() })
+		for i := 0; i <= moved.Order(); i++ {
+			if _, ok := show.Laplacians(moved.Coef(i)); !ok {
+				return plain, sol.Sum
+			}
+		}
+		out = append(out, reduce.Addend{Coef: moved, Name: a.Name})
+	}
+	return show.Spatial(sol.Name, 0, power), out
+}
+
+// actionBlock is the action of a system.
+func (f *findings) actionBlock(s reduce.System) block {
+	if len(s.Names) == 0 {
+		return block{sentence: words("The action is zero.")}
+	}
+	form, err := s.D.NormalForm()
+	if err != nil {
+		panic(err) // every step keeps the matrix self-adjoint
+	}
+	if len(s.Names) == 1 {
+		q := make([]field.Elem, len(form.Symmetric))
+		for n := range q {
+			q[n] = form.Symmetric[n][0][0].Lowest()
+		}
+		return block{display: show.Action(clockName(f.Model.Clock), s.Names[0], q)}
+	}
+	return block{display: show.ActionMatrix(clockName(f.Model.Clock), s.Names, form)}
+}
+
+var numerals = []string{"no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten"}
+
+func degrees(n int) string {
+	count := fmt.Sprint(n)
+	if n < len(numerals) {
+		count = numerals[n]
+	}
+	if n == 1 {
+		return count + " degree of freedom"
+	}
+	return count + " degrees of freedom"
+}
+
+// remains is the result itself.
+func (f *findings) remains() *section {
+	var names []phrase
+	for _, n := range f.Remaining.Names {
+		names = append(names, maths(show.Symbol(n, 0)))
+	}
+	s := &section{}
+	if f.DegreesOfFreedom == 0 {
+		s.heading = words("Remains: nothing propagates (confirmed independently)")
+	} else {
+		s.heading = join("", words("Remains: "), list(names), words(", "+degrees(f.DegreesOfFreedom)+" (confirmed independently)"))
+	}
+	if rows := f.names(); len(rows) > 0 {
+		s.blocks = append(s.blocks, block{rows: rows})
+	}
+	switch {
+	case len(names) == 0:
+		s.blocks = append(s.blocks, block{sentence: words("All fields are fixed by the constraints, and the action that is left is zero.")})
+	case f.Single != nil:
+		s.blocks = append(s.blocks, f.actionBlock(f.Remaining), block{rows: f.quantities()}, block{rows: f.equations()})
+	default:
+		s.blocks = append(s.blocks, f.actionBlock(f.Remaining), block{rows: f.quantities()})
+	}
+	return s
+}
+
+// names says what a new or redefined variable stands for.
+func (f *findings) names() []row {
+	var rows []row
+	if sum := f.DefinitionSum(); sum != nil {
+		rows = append(rows, row{label: words("where"), value: compare(show.Symbol(f.Requested, 0), equals, reduce.SumNode(sum))})
+	}
+	if sum := f.RequestedSum(); sum != nil {
+		rows = append(rows, row{label: words("asked for"), value: compare(show.Symbol(f.Requested, 0), equals, reduce.SumNode(sum))})
+	}
+	return rows
+}
+
+// quantities are the rows of what the action is made of, stability beside it.
+func (f *findings) quantities() []row {
+	var rows []row
+	if f.Single != nil {
+		rows = singleRows(f.Single)
+	} else {
+		rows = severalRows(f.Several)
+	}
+	var weak []phrase
+	for _, s := range f.Stability {
+		if s.Concern == reduce.StrongCoupling {
+			weak = append(weak, compare(show.Elem(s.Condition), equals, show.Int(0)))
+			continue
+		}
+		rows = place(rows, s)
+	}
+	if len(weak) > 0 {
+		rows = append(rows, row{label: words("strong coupling"), value: join("", words("where "), join(" or ", weak...))})
+	}
+	return rows
+}
+
+func singleRows(s *reduce.Single) []row {
+	var rows []row
+	add := func(label string, e field.Elem) {
+		rows = append(rows, row{label: words(label), value: maths(show.Elem(e))})
+	}
+	switch {
+	case s.Kinetic != nil:
+		add("kinetic", *s.Kinetic)
+		add("gradient", *s.Gradient)
+		add("mass", *s.Mass)
+	case len(s.Q) == 2:
+		add("kinetic", s.Q[1])
+		rows = append(rows, coefficientRow("q0", s.Q[0]))
+	default:
+		for n := len(s.Q) - 1; n >= 0; n-- {
+			rows = append(rows, coefficientRow(fmt.Sprint("q", n), s.Q[n]))
+		}
+	}
+	switch {
+	case s.SoundSpeed2 != nil:
+		add("sound speed²", *s.SoundSpeed2)
+	case s.GrowthInK > 0:
+		rows = append(rows, row{label: words("sound speed²"), value: words("unbounded")})
+	}
+	return rows
+}
+
+func coefficientRow(name string, e field.Elem) row {
+	return row{label: maths(show.Symbol(name, 0)), value: maths(show.Elem(e))}
+}
+
+func severalRows(s *reduce.Several) []row {
+	if s.SoundSpeeds == nil {
+		return nil
+	}
+	var terms []show.Node
+	for i := len(s.SoundSpeeds) - 1; i >= 0; i-- {
+		power := show.Int(1)
+		if i > 0 {
+			power = show.Power(show.Symbol("c_s", 0), 2*i)
+		}
+		terms = append(terms, show.Product(show.Elem(s.SoundSpeeds[i]), power))
+	}
+	return []row{{label: words("sound speeds"), value: compare(show.Sum(terms...), equals, show.Int(0))}}
+}
+
+// place puts a statement on stability beside the quantity it is about, or into a row of its
+// own.
+func place(rows []row, s reduce.Statement) []row {
+	for _, label := range besides[s.Concern] {
+		for i := range rows {
+			if len(rows[i].label) == 1 && rows[i].label[0].words == label && rows[i].note == nil {
+				rows[i].note = verdict(s)
+				return rows
+			}
+		}
+	}
+	return append(rows, row{label: words(ownLabel[s.Concern]), value: verdict(s)})
+}
+
+// besides lists the rows that a statement may stand beside, the best first.
+var besides = map[reduce.Concern][]string{
+	reduce.Ghost:        {"kinetic"},
+	reduce.GradientSign: {"gradient", "sound speed²"},
+	reduce.MassSign:     {"mass"},
+	reduce.Growth:       {"sound speed²"},
+}
+
+var ownLabel = map[reduce.Concern]string{
+	reduce.Ghost: "kinetic matrix", reduce.GradientSign: "large k", reduce.MassSign: "small k",
+	reduce.Ostrogradsky: "higher order", reduce.Growth: "large k",
+}
+
+// verdict is a statement in words.
+func verdict(s reduce.Statement) phrase {
+	fault := map[reduce.Concern]string{
+		reduce.Ghost: "ghost", reduce.GradientSign: "gradient instability", reduce.MassSign: "tachyon",
+	}[s.Concern]
+	switch s.Concern {
+	case reduce.Ostrogradsky:
+		return words(fmt.Sprintf("an Ostrogradsky ghost: the equation of motion is of order %d", s.Number))
+	case reduce.Growth:
+		return join("", words("grows as "), maths(show.Power(show.Symbol("k", 0), s.Number)), words(" at large "), maths(show.Symbol("k", 0)))
+	}
+	switch s.Verdict {
+	case reduce.Always:
+		return words("no " + fault)
+	case reduce.Never:
+		return words("a " + fault)
+	}
+	conditions := s.Minors
+	if len(conditions) == 0 {
+		conditions = []field.Elem{s.Condition}
+	}
+	var list []phrase
+	for _, c := range conditions {
+		list = append(list, compare(show.Elem(c), greater, show.Int(0)))
+	}
+	return join("", words("no "+fault+" while "), join(" and ", list...))
+}
+
+// equations are the equation of motion and the canonical variable.
+func (f *findings) equations() []row {
+	var terms []show.LinearTerm
+	for i := len(f.Single.EquationOfMotion) - 1; i >= 0; i-- {
+		terms = append(terms, show.LinearTerm{Coef: f.Single.EquationOfMotion[i], Name: f.Variable, Order: i})
+	}
+	rows := []row{{label: words("equation of motion"), value: compare(show.Linear(terms), equals, show.Int(0))}}
+	freq, ok := f.Frequency2()
+	if !ok {
+		return rows
+	}
+	v := func(n int) show.Node { return show.Symbol("v", n) }
+	curvature := show.Quotient(show.Symbol("z", 2), show.Symbol("z", 0))
+	mode := show.Sum(v(2), show.Product(show.Sum(show.Elem(freq), show.Neg(curvature)), v(0)))
+	canonical := join(", ",
+		compare(v(0), equals, show.Product(show.Symbol("z", 0), show.Symbol(f.Variable, 0))),
+		compare(mode, equals, show.Int(0)))
+	square := show.Power(show.Symbol("z", 0), 2)
+	return append(rows,
+		row{label: words("canonical"), value: canonical, note: primes(f.Model.Clock)},
+		row{label: maths(square), value: maths(show.Elem(*f.Single.ZSquared))},
+		row{label: maths(curvature), value: maths(show.Elem(*f.Single.ZppOverZ))})
+}
+
+// primes says what the primes of the canonical equation are, where the clock has others.
+func primes(c parse.Clock) phrase {
+	if c == parse.Conformal {
+		return nil
+	}
+	return join("", words("primes here are d/d"), maths(show.Symbol("eta", 0)))
+}
+
+// series is a section of the expansions.
+func (f *findings) series() *section {
+	if len(f.expansions) == 0 {
+		return nil
+	}
+	s := &section{heading: words("Series of the operator")}
+	for _, x := range f.expansions {
+		s.blocks = append(s.blocks, block{sentence: expansionTitle(x)}, block{rows: f.expansionRows(x)})
+	}
+	return s
+}
+
+func expansionTitle(x *reduce.Expansion) phrase {
+	switch x.In {
+	case "k":
+		return join("", words("large scales, to order "), maths(wave(x.Order)))
+	case "1/k":
+		return join("", words("small scales, to order 1/"), maths(wave(x.Order)))
+	}
+	var names []phrase
+	for _, n := range strings.Split(x.In, ", ") {
+		names = append(names, maths(show.Symbol(n, 0)))
+	}
+	return join("", words("small "), list(names), words(fmt.Sprintf(", to order %d", x.Order)))
+}
+
+func (f *findings) expansionRows(x *reduce.Expansion) []row {
+	var rows []row
+	for i, p := range x.Places {
+		var terms []show.Node
+		for _, t := range x.Coefs[i].Terms {
+			terms = append(terms, show.Elem(x.Value(t)))
+		}
+		value := formula{{node: show.Sum(terms...)}}
+		if !x.Coefs[i].Exact {
+			value = append(value, part{sign: plus}, part{order: leftOut(x, x.Coefs[i].Order)})
+			if len(terms) == 0 {
+				value = value[2:]
+			}
+		}
+		rows = append(rows, row{label: f.placeLabel(p), value: phrase{{maths: value}}})
+	}
+	return rows
+}
+
+// wave is kⁿ, n ≥ 0.
+func wave(n int) show.Node {
+	if n == 0 {
+		return show.Int(1)
+	}
+	return show.Power(show.Symbol("k", 0), n)
+}
+
+// leftOut is what stands in O(…).
+func leftOut(x *reduce.Expansion, order int) show.Node {
+	if x.In == "k" || x.In == "1/k" {
+		if order < 0 {
+			return show.Quotient(show.Int(1), wave(-order))
+		}
+		return wave(order)
+	}
+	if !strings.Contains(x.In, ",") {
+		return show.Power(show.Symbol(x.In, 0), order)
+	}
+	return show.Int(int64(order)) // total degree
+}
+
+func (f *findings) placeLabel(p reduce.Place) phrase {
+	letter := "q"
+	if p.Antisymmetric {
+		letter = "p"
+	}
+	label := maths(show.Symbol(fmt.Sprint(letter, p.N), 0))
+	if f.Single == nil {
+		names := f.Remaining.Names
+		label = join("", label, words(" ("), maths(show.Symbol(names[p.A], 0)), words(", "), maths(show.Symbol(names[p.B], 0)), words(")"))
+	}
+	return label
+}
+
+// atPoint is a section of values.
+func (f *findings) atPoint() *section {
+	if f.values == nil {
+		return nil
+	}
+	var point []phrase
+	for _, a := range f.values.Point {
+		point = append(point, compare(show.Generator(f.Model.K, a.Gen), equals, show.Elem(a.Value)))
+	}
+	s := &section{heading: join("", words("At "), list(point))}
+	if f.values.Single != nil {
+		rows := singleRows(f.values.Single)
+		for i, c := range f.values.Single.EquationOfMotion[:len(f.values.Single.EquationOfMotion)-1] {
+			label := join("", words("equation of motion, coefficient of "), maths(show.Symbol(f.Variable, i)))
+			rows = append(rows, row{label: label, value: maths(show.Elem(c))})
+		}
+		if z := f.values.Single; z.ZSquared != nil {
+			rows = append(rows,
+				row{label: maths(show.Power(show.Symbol("z", 0), 2)), value: maths(show.Elem(*z.ZSquared))},
+				row{label: maths(show.Quotient(show.Symbol("z", 2), show.Symbol("z", 0))), value: maths(show.Elem(*z.ZppOverZ))})
+		}
+		s.blocks = append(s.blocks, block{rows: rows})
+	}
+	if f.values.Several != nil {
+		system := f.values.Several
+		s.blocks = append(s.blocks,
+			block{display: show.ActionMatrix(clockName(f.Model.Clock), f.Remaining.Names, system.Form)},
+			block{rows: severalRows(system)})
+	}
+	return s
+}

@@ -1,0 +1,80 @@
+/*
+Remnant takes an action for cosmological perturbations, solves its constraints and returns
+the one operator that remains.
+
+Usage:
+
+	remnant reduce FILE [flags]
+	remnant tidy FILE… [-w | --check]
+	remnant notation
+	remnant code FILE -o DIR
+	remnant version
+
+FILE is a model in the notation that 'remnant notation' prints; "-" is standard input.
+Results go to standard output, diagnostics to standard error.
+
+# reduce
+
+Reduce prints what remains of the action: what was solved by which equation and under which
+assumption, the degrees of freedom with an independent count, the action, its kinetic,
+gradient and mass coefficients, the squared sound speed with the conditions for stability,
+the equation of motion and the canonical variable. The flags are:
+
+	--format text|latex|json|markdown
+		The form of the result. Text is wrapped to the terminal, or to 100 columns in
+		a pipe. LaTeX is a document that needs amsmath and amssymb. JSON is documented
+		at the type Document of package reduce, and stable.
+	--steps
+		Show the action after each step of the elimination.
+	--series ORDER
+		Expand what remains in powers of the wave number on large and on small scales,
+		and in the parameters that the model declares small. Without the flag a model
+		with small parameters is expanded in these, to the order that it states.
+	--at "H = 1/10; phi' = 1/3; k = 2"
+	--at @FILE
+		Give exact values at a point: assignments split at semicolons, or one on a line
+		of a file. A value for what a background relation fixes is checked against it.
+		A name that the result does not need is passed over; one that it needs and
+		lacks is an error. Values of constants may stand in the model ('numbers'), and
+		functions with a definition need none.
+	-o FILE
+		Write to a file. It is complete or not there.
+	--ascii
+		Write text in ASCII.
+	--width N
+		Wrap text to N columns.
+	--limit-terms N
+		Stop when an expression has more than N terms (200000; 0 is no limit).
+	--limit-time D
+		Stop after the time D (10m; 0 is no limit).
+
+# tidy
+
+Tidy prints files in the standard layout of the notation. Comments stay where they are.
+With -w the files are replaced; with --check nothing is written but the names of files that
+differ from their standard layout.
+
+# notation
+
+Notation prints the grammar in EBNF, with an example for each production.
+
+# code
+
+Code writes a Go package without dependencies: the coefficients of what remains with their
+derivatives by the clock, the mode equation, and a test with exact expectations. It takes
+--limit-terms and --limit-time too.
+
+# Exit status
+
+	0   done
+	1   a check failed: a file is not in its standard layout
+	2   the input was refused
+	3   a limit was reached, or the run was interrupted; the message names the stage
+	70  a fault of the program; please report it together with the model
+
+# Environment
+
+Headings are bold on a terminal, unless NO_COLOR is set or TERM is dumb. Work of more than a
+second shows its stage on a terminal, and nothing in a pipe.
+*/
+package main
