@@ -56,11 +56,23 @@ type fraction struct {
 }
 
 func (q fraction) node() Node {
+	if s, ok := q.loneSum(); ok && q.neg {
+		return leadPositive(negateSum(s))
+	}
 	n := Quotient(Product(q.num...), Product(q.den...))
 	if q.neg {
 		n = Neg(n)
 	}
 	return n
+}
+
+// loneSum is the sum that is all of the fraction but its sign.
+func (q fraction) loneSum() (sum, bool) {
+	if len(q.num) != 1 || !isNumber(Product(q.den...), 1) {
+		return sum{}, false
+	}
+	s, ok := q.num[0].(sum)
+	return s, ok
 }
 
 // times is the fraction with x as the last factor of the numerator, after a space if spaced.
@@ -104,9 +116,6 @@ func fractionOf(e field.Elem) fraction {
 			p.exp = -p.exp
 			den = append(den, p)
 		}
-	}
-	if neg && len(den) == 0 && len(num) == 1 && num[0].sum && num[0].exp == 1 && isUnit(r) {
-		num[0].node, neg = leadPositive(negateSum(num[0].node.(sum))), false
 	}
 	return fraction{
 		neg: neg,

@@ -2,7 +2,7 @@ package show
 
 // Names: one ASCII name, and how it is written in Unicode and in LaTeX. A name is a letter
 // or the name of a letter (zeta), perhaps with δ before it (dphi is δφ) and an index behind
-// it (u_1, eps2).
+// it (u_1, eps2, alphaB).
 
 import (
 	"strings"
@@ -62,6 +62,10 @@ func splitName(name string) nameParts {
 		p.stem, p.index = name[:i], name[i+1:]
 	} else if i := len(strings.TrimRight(name, "0123456789")); i < len(name) {
 		p.stem, p.index = name[:i], name[i:]
+	} else if r, n := utf8.DecodeLastRuneInString(name); unicode.IsUpper(r) {
+		if _, known := letterByName[name[:len(name)-n]]; known {
+			p.stem, p.index = name[:len(name)-n], name[len(name)-n:]
+		}
 	}
 	for _, prefix := range []string{"d", "delta"} {
 		rest, ok := strings.CutPrefix(p.stem, prefix)

@@ -130,6 +130,8 @@ func TestNames(t *testing.T) {
 		{"u_1", "u₁", `u_{1}`, "U1", "an index"},
 		{"eps2", "ε₂", `\epsilon_{2}`, "Eps2", "digits are an index"},
 		{"M_pl", "M_pl", `M_{\mathit{pl}}`, "MPl", "an index in letters"},
+		{"alphaB", "α_B", `\alpha_{B}`, "AlphaB", "a capital behind a Greek letter is an index"},
+		{"GT", "GT", `\mathit{GT}`, "GT", "a word in capitals"},
 		{"Theta", "Θ", `\Theta`, "Theta", "a capital"},
 		{"cs", "cs", `\mathit{cs}`, "Cs", "a word is one symbol"},
 		{"box", "□", `\Box`, "Box", "a symbol"},

@@ -67,7 +67,7 @@ func singleContents(u string, s *reduce.Single) []quantity {
 		out = append(out, number("ZSquared", "is z² = 𝒦N̄/a; v = zu is the canonical variable", *s.ZSquared))
 	}
 	if s.ZppOverZ != nil {
-		out = append(out, number("ZppOverZ", "is z''/z, where a prime is a derivative by conformal time", *s.ZppOverZ))
+		out = append(out, number("ZppOverZ", "is z″/z, where a prime is a derivative by conformal time", *s.ZppOverZ))
 	}
 	if n := len(s.EquationOfMotion) - 1; n > 0 {
 		out = append(out, modeEquation(u, s.EquationOfMotion))
@@ -97,7 +97,7 @@ func severalContents(r *reduce.Result) ([]quantity, error) {
 	add := func(letter, what string, ms [][][]field.Elem) {
 		for n, m := range ms {
 			name := fmt.Sprintf("%s%d", letter, n)
-			doc := fmt.Sprintf("is the %s matrix of %s", what, derivativesOf(letter, n))
+			doc := fmt.Sprintf("is the %s matrix of the products %s in L", what, derivativesOf(letter, n))
 			out = append(out, matrix(name, doc, m), matrix("D"+name, "is the derivative of "+name+" by the clock", derivative(m)))
 		}
 	}

@@ -163,7 +163,7 @@ func (p *point) poly(q poly.Poly) (*big.Float, float64, error) {
 		return nil, 0, unfit{"a factor vanishes"}
 	}
 	condition, _ := newFloat().Quo(size, newFloat().Abs(sum)).Float64()
-	roundings := float64(p.s.roundings[p.s.poly(q)])
+	roundings := float64(p.s.roundings[p.s.signedPoly(q).id])
 	return sum, condition * (roundings + worst), nil
 }
 

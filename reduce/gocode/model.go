@@ -52,7 +52,7 @@ func (g *generator) fields(b *bytes.Buffer, gens []field.Gen) {
 func (g *generator) function(b *bytes.Buffer, q quantity) {
 	writeComment(b, q.name+" "+q.doc+g.colon(q))
 	g.formulas(b, q)
-	code := Share(named(q.values), g.leaf)
+	code := shareSums(q.sums(), g.leaf)
 	params := g.arguments(q.values, false)
 	switch {
 	case q.mode && q.cols > 0:
@@ -70,10 +70,35 @@ func (g *generator) function(b *bytes.Buffer, q quantity) {
 	b.WriteString("return " + q.result(code.Results) + "\n}\n\n")
 }
 
-func named(values []field.Elem) []Named {
-	out := make([]Named, len(values))
-	for i, e := range values {
-		out[i] = Named{Value: e}
+// sums lists what the function returns: the values, or for an equation of motion the
+// accelerations.
+func (q quantity) sums() [][]addend {
+	if !q.mode {
+		out := make([][]addend, len(q.values))
+		for i, e := range q.values {
+			out[i] = []addend{{Coef: e}}
+		}
+		return out
+	}
+	if q.cols == 0 {
+		var sum []addend
+		for i := len(q.values) - 1; i >= 0; i-- {
+			u := fmt.Sprintf("u[%d]", i)
+			if q.order == 2 {
+				u = []string{"u", "du"}[i]
+			}
+			sum = append(sum, addend{q.values[i], u})
+		}
+		return [][]addend{sum}
+	}
+	n := q.cols
+	out := make([][]addend, n)
+	for a := range n {
+		for i, u := range []string{"u", "du"} {
+			for c := range n {
+				out[a] = append(out[a], addend{q.values[i*n*n+a*n+c], fmt.Sprintf("%s[%d]", u, c)})
+			}
+		}
 	}
 	return out
 }
@@ -100,7 +125,7 @@ func (g *generator) formulas(b *bytes.Buffer, q quantity) {
 	}
 	empty := true
 	for i, e := range q.values {
-		if !e.IsZero() {
+		if !e.IsZero() && !(q.rows > 0 && !q.mode && i/q.cols > i%q.cols) { // the rest by symmetry
 			g.formula(b, show.Equation(show.Symbol(q.entryLabel(i), 0), show.Elem(e)))
 			empty = false
 		}
@@ -134,8 +159,10 @@ func (q quantity) goType() string {
 // result is the returned expression.
 func (q quantity) result(values []string) string {
 	switch {
+	case q.mode && q.cols > 0:
+		return fmt.Sprintf("[%d]float64{\n%s,\n}", q.cols, strings.Join(values, ",\n"))
 	case q.mode:
-		return q.acceleration(values)
+		return values[0]
 	case q.rows > 0:
 		s := q.goType() + "{\n"
 		for i := range q.rows {
@@ -146,33 +173,6 @@ func (q quantity) result(values []string) string {
 		return q.goType() + "{" + strings.Join(values, ", ") + "}"
 	}
 	return values[0]
-}
-
-// acceleration is the sum of the coefficients times the lower derivatives.
-func (q quantity) acceleration(values []string) string {
-	if q.cols == 0 {
-		var terms []string
-		for i, v := range values {
-			u := fmt.Sprintf("u[%d]", i)
-			if q.order == 2 {
-				u = []string{"u", "du"}[i]
-			}
-			terms = append(terms, fmt.Sprintf("(%s)*%s", v, u))
-		}
-		return strings.Join(terms, " + ")
-	}
-	n := q.cols
-	s := fmt.Sprintf("[%d]float64{\n", n)
-	for a := range n {
-		var terms []string
-		for i, u := range []string{"u", "du"} {
-			for c := range n {
-				terms = append(terms, fmt.Sprintf("(%s)*%s[%d]", values[i*n*n+a*n+c], u, c))
-			}
-		}
-		s += strings.Join(terms, " + ") + ",\n"
-	}
-	return s + "}"
 }
 
 // numbers are the quantities that Evaluate computes.
@@ -207,7 +207,7 @@ func (g *generator) together(b *bytes.Buffer) {
 	values := g.numberValues()
 	fmt.Fprintf(b, "}\n\n// Evaluate computes all coefficients together, which costs less than one by one.\n"+
 		"func Evaluate(%s) Coefficients {\n", g.arguments(values, false))
-	code := Share(named(values), g.leaf)
+	code := Share(values, g.leaf)
 	for _, s := range code.Statements {
 		b.WriteString(s + "\n")
 	}

@@ -13,6 +13,7 @@ import (
 	"go/token"
 	"strings"
 
+	"remnant/expr/budget"
 	"remnant/expr/field"
 	"remnant/expr/show"
 	"remnant/parse"
@@ -43,8 +44,11 @@ type generator struct {
 	show       show.Writer
 }
 
-// Generate writes the package for a result. It fails where nothing propagates.
-func Generate(r *reduce.Result) (*Package, error) {
+// Generate writes the package for a result. It fails where nothing propagates, and with a
+// *budget.Stop where a limit was reached.
+func Generate(r *reduce.Result) (p *Package, err error) {
+	defer budget.Catch(&err)
+	r.Model.K.Budget().Stage("writing Go code")
 	q, err := contentsOf(r)
 	if err != nil {
 		return nil, err
@@ -52,10 +56,10 @@ func Generate(r *reduce.Result) (*Package, error) {
 	g := &generator{r: r, name: PackageName(r.Model.Title), quantities: q, ids: map[field.Gen]string{},
 		show: show.Writer{Width: 84, Conformal: r.Model.Clock == parse.Conformal}}
 	g.collect()
-	p := &Package{Name: g.name}
+	p = &Package{Name: g.name}
 	for _, f := range []struct{ name, text string }{
 		{"doc.go", g.doc()},
-		{"go.mod", "module " + g.name + "\n\ngo 1.21\n"},
+		{"go.mod", "module generated/" + g.name + "\n\ngo 1.21\n"},
 		{"model.go", g.model()},
 		{"model_test.go", g.test()},
 	} {

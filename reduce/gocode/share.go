@@ -18,12 +18,6 @@ import (
 	"remnant/expr/poly"
 )
 
-// Named is a value with the name that its code goes by.
-type Named struct {
-	Name  string
-	Value field.Elem
-}
-
 // operation is what a node of the graph does.
 type operation uint8
 
@@ -58,8 +52,8 @@ type sharer struct {
 }
 
 type sharedPoly struct {
-	p  poly.Poly
-	id int
+	p    poly.Poly
+	node signed
 }
 
 func newSharer(f *field.Field, leaf func(field.Gen) string) *sharer {
@@ -153,23 +147,29 @@ func (s *sharer) plain(x signed) int {
 }
 
 // elem is the node of an element.
-func (s *sharer) elem(e field.Elem) int {
+func (s *sharer) elem(e field.Elem) int { return s.plain(s.signedElem(e)) }
+
+func (s *sharer) signedElem(e field.Elem) signed {
 	if e.IsZero() {
-		return s.constant(new(big.Int))
+		return signed{false, s.constant(new(big.Int))}
 	}
+	s.f = e.Field()
 	r, factors := e.Factors()
 	num, den := s.constant(new(big.Int).Abs(r.Num())), s.constant(r.Denom())
+	neg := false
 	for _, fp := range factors {
-		if x := s.poly(fp.P); fp.Exp > 0 {
-			num = s.mul(num, s.pow(x, fp.Exp))
+		x := s.signedPoly(fp.P)
+		neg = neg != (x.neg && fp.Exp%2 != 0)
+		if fp.Exp > 0 {
+			num = s.mul(num, s.pow(x.id, fp.Exp))
 		} else {
-			den = s.mul(den, s.pow(x, -fp.Exp))
+			den = s.mul(den, s.pow(x.id, -fp.Exp))
 		}
 	}
 	if !s.isOne(den) {
 		num = s.add(node{op: opDiv, a: num, b: den})
 	}
-	return s.plain(signed{r.Sign() < 0, num})
+	return signed{neg != (r.Sign() < 0), num}
 }
 
 // generator is the node of a generator: a leaf, or a function of its argument.
@@ -185,41 +185,41 @@ func (s *sharer) generator(g field.Gen) int {
 	return s.add(node{op: opLeaf, text: s.leaf(g)})
 }
 
-// poly is the node of a polynomial.
-func (s *sharer) poly(p poly.Poly) int { return s.plain(s.signedPoly(p)) }
-
+// signedPoly is the node of a polynomial.
 func (s *sharer) signedPoly(p poly.Poly) signed {
 	if p.IsZero() {
 		return signed{false, s.constant(new(big.Int))}
 	}
 	c, p := p.PrimitivePart()
-	return s.scale(c, s.primitive(p))
+	x := s.primitive(p)
+	out := s.scale(c, x.id)
+	return signed{out.neg != x.neg, out.id}
 }
 
 // primitive is the node of a primitive polynomial with positive leading coefficient.
-func (s *sharer) primitive(p poly.Poly) int {
+func (s *sharer) primitive(p poly.Poly) signed {
 	h := p.Hash()
 	for _, known := range s.polys[h] {
 		if known.p.Equal(p) {
-			return known.id
+			return known.node
 		}
 	}
-	id := s.horner(p)
-	s.polys[h] = append(s.polys[h], sharedPoly{p, id})
-	return id
+	x := s.horner(p)
+	s.polys[h] = append(s.polys[h], sharedPoly{p, x})
+	return x
 }
 
-func (s *sharer) horner(p poly.Poly) int {
+func (s *sharer) horner(p poly.Poly) signed {
 	if mono := p.MonoContent(); len(mono) > 0 {
 		rest, _ := p.DivMono(mono)
 		x := s.primitive(rest)
 		for _, m := range mono {
-			x = s.mul(x, s.pow(s.generator(m.Var), int(m.Exp)))
+			x.id = s.mul(x.id, s.pow(s.generator(m.Var), int(m.Exp)))
 		}
 		return x
 	}
 	if c, ok := p.Const(); ok {
-		return s.constant(c)
+		return signed{false, s.constant(c)}
 	}
 	v, n := mostFrequent(p)
 	if n == 1 {
@@ -228,7 +228,7 @@ func (s *sharer) horner(p poly.Poly) int {
 	with, without, exp := splitBy(p, v)
 	drawn := s.signedPoly(with)
 	drawn.id = s.mul(drawn.id, s.pow(s.generator(v), exp))
-	return s.plain(s.sum(drawn, s.signedPoly(without)))
+	return s.sum(drawn, s.signedPoly(without))
 }
 
 // mostFrequent is the variable that stands in most terms, of equals the lowest, and in how
@@ -269,7 +269,7 @@ func splitBy(p poly.Poly, v poly.Var) (with, without poly.Poly, exp int) {
 }
 
 // termByTerm adds the terms, those with a plus sign first.
-func (s *sharer) termByTerm(p poly.Poly) int {
+func (s *sharer) termByTerm(p poly.Poly) signed {
 	var plus, minus []signed
 	for mono, c := range p.Terms() {
 		x := s.constant(big.NewInt(1))
@@ -287,7 +287,7 @@ func (s *sharer) termByTerm(p poly.Poly) int {
 	for _, t := range all[1:] {
 		out = s.sum(out, t)
 	}
-	return s.plain(out)
+	return out
 }
 
 // Straight is straight-line Go code for several values.
@@ -296,29 +296,61 @@ type Straight struct {
 	Results    []string // an expression for each value
 }
 
+// addend is Coef times the Go expression Of; an empty Of is 1.
+type addend struct {
+	Coef field.Elem
+	Of   string
+}
+
 // Share writes code for the values; leaf gives the Go expression of a generator that is no
 // root and no function. The code allocates nothing and is a function of the values alone.
 // Its cost follows the number of different subexpressions.
-func Share(values []Named, leaf func(field.Gen) string) Straight {
-	var f *field.Field
-	for _, v := range values {
-		if f == nil {
-			f = v.Value.Field()
-		}
-	}
-	s := newSharer(f, leaf)
-	w := straightWriter{s: s, temp: map[int]string{}}
-	roots := make([]int, len(values))
+func Share(values []field.Elem, leaf func(field.Gen) string) Straight {
+	sums := make([][]addend, len(values))
 	for i, v := range values {
-		roots[i] = s.elem(v.Value)
+		sums[i] = []addend{{Coef: v}}
 	}
+	return shareSums(sums, leaf)
+}
+
+// shareSums writes code for sums of multiples of expressions.
+func shareSums(sums [][]addend, leaf func(field.Gen) string) Straight {
+	s := newSharer(nil, leaf)
+	roots := make([]int, len(sums))
+	for i, sum := range sums {
+		roots[i] = s.plain(s.combination(sum))
+	}
+	w := straightWriter{s: s, temp: map[int]string{}}
 	w.countUses(roots)
 	var out Straight
 	for _, id := range roots {
-		text, _ := w.render(id)
-		out.Results = append(out.Results, text)
+		out.Results = append(out.Results, w.result(id))
 	}
 	out.Statements = w.statements
+	return out
+}
+
+// combination is the node of a sum of multiples, those that vanish left out.
+func (s *sharer) combination(sum []addend) signed {
+	var out signed
+	empty := true
+	for _, a := range sum {
+		if a.Coef.IsZero() {
+			continue
+		}
+		x := s.signedElem(a.Coef)
+		if a.Of != "" {
+			x.id = s.mul(x.id, s.add(node{op: opLeaf, text: a.Of}))
+		}
+		if empty {
+			out, empty = x, false
+		} else {
+			out = s.sum(out, x)
+		}
+	}
+	if empty {
+		return signed{false, s.constant(new(big.Int))}
+	}
 	return out
 }
 
@@ -366,6 +398,20 @@ const (
 	goUnary
 	goAtom
 )
+
+// result is the expression of a value, which is cut only where it is used again.
+func (w *straightWriter) result(id int) string {
+	n := w.s.nodes[id]
+	switch {
+	case n.op == opConst || n.op == opLeaf || w.uses[id] > 1:
+		text, _ := w.render(id)
+		return text
+	case n.op == opNeg && w.uses[n.a] == 1 && w.s.nodes[n.a].op == opDiv:
+		return "-(" + w.result(n.a) + ")"
+	}
+	text, _ := w.operation(id, n)
+	return text
+}
 
 // render is the expression of a node and its precedence; statements that it needs are
 // written first.
