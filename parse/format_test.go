@@ -54,7 +54,9 @@ func TestLayoutOfShippedModels(t *testing.T) {
 			t.Errorf("%s: %v", name, list)
 			continue
 		}
-		checkLayout(t, file)
+		if text := checkLayout(t, file); text != file.Source.Text {
+			t.Errorf("%s is not in its standard layout:\n%s", name, cmp.Diff(file.Source.Text, text))
+		}
 	}
 }
 

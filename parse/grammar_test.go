@@ -109,6 +109,20 @@ func TestRandomSentencesParse(t *testing.T) {
 	}
 }
 
+// TestStatementParser drives the statement grammar through its own lexer, without the
+// pass that cuts a file into lines.
+func TestStatementParser(t *testing.T) {
+	s, err := statementParser.ParseString("one.act", "keep ζ = a*u  # a comment")
+	if err != nil || s.Keep == nil || s.Keep.Word.Name() != "zeta" || String(s.Keep.Definition.X) != "a*u" {
+		t.Errorf("%+v, %v", s, err)
+	}
+	for _, text := range []string{"", "keep", "keep $", "\x00"} {
+		if _, err := statementParser.ParseString("bad.act", text); err == nil {
+			t.Errorf("%q is read", text)
+		}
+	}
+}
+
 // wrapped puts a sentence of a production into a statement.
 var wrapped = map[string]string{
 	"File": "%s", "Symbol": "constants %s", "Function": "functions %s", "Argument": "functions f(%s)",
