@@ -29,8 +29,8 @@ import (
 //   - the layout is newLayout(the variables that occur, bits of the greatest exponent);
 //   - coefficients are words (co) if all of them fit, else all are big (bg).
 type Poly struct {
+	_ [0]func() // forbids ==
 	d *data
-	_ [0]func()
 }
 
 type data struct {

@@ -137,7 +137,9 @@ func (r Ring[E]) optional() []law[E] {
 // checker performs the operations and checks what can be seen of one at a time.
 type checker[E any] struct {
 	Ring[E]
-	t interface{ Fatalf(format string, args ...any) }
+	t interface {
+		Fatalf(format string, args ...any)
+	}
 }
 
 func (c *checker[E]) add(x, y E) E { return c.binary("sum", c.Add, x, y) }
