@@ -435,6 +435,9 @@ func (w *straightWriter) render(id int) (string, int) {
 }
 
 func (w *straightWriter) operation(id int, n node) (string, int) {
+	if n.op == opMul && w.s.nodes[n.b].op == opConst { // numbers come first
+		n.a, n.b = n.b, n.a
+	}
 	a, ap := w.render(n.a)
 	w.size[id] = w.size[n.a] + 1
 	switch n.op {
