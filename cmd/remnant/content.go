@@ -5,12 +5,14 @@ package main
 import (
 	"fmt"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"remnant/expr/field"
 	"remnant/expr/show"
 	"remnant/parse"
 	"remnant/reduce"
+	"remnant/series"
 )
 
 // findings is a reduction with what the command line asked for beside it.
@@ -19,6 +21,23 @@ type findings struct {
 	expansions []*reduce.Expansion
 	values     *reduce.Values
 	steps      bool // show the action after each step
+	full       bool // write out long expressions that follow from others
+}
+
+// Expressions that follow from others on the page are written out up to longExpression
+// terms, and conditions up to longCondition.
+const (
+	longExpression = 40
+	longCondition  = 6
+)
+
+// long reports whether expressions are too long to be repeated on a page.
+func (f *findings) long(es ...field.Elem) bool {
+	n := 0
+	for _, e := range es {
+		n += e.Terms()
+	}
+	return !f.full && n > longExpression
 }
 
 // pageOf writes the page.
@@ -185,10 +204,18 @@ func (f *findings) remains() *section {
 	switch {
 	case len(names) == 0:
 		s.blocks = append(s.blocks, block{sentence: words("All fields are fixed by the constraints, and the action that is left is zero.")})
-	case f.Single != nil:
-		s.blocks = append(s.blocks, f.actionBlock(f.Remaining), block{rows: f.quantities()}, block{rows: f.equations()})
 	default:
-		s.blocks = append(s.blocks, f.actionBlock(f.Remaining), block{rows: f.quantities()})
+		s.blocks = append(s.blocks, f.actionBlock(f.Remaining))
+	}
+	if rows := f.quantities(); len(rows) > 0 {
+		s.blocks = append(s.blocks, block{rows: rows})
+	}
+	if f.Single != nil {
+		rows, short := f.equations()
+		s.blocks = append(s.blocks, block{rows: rows})
+		if short {
+			s.blocks = append(s.blocks, block{sentence: words("Long expressions are given by others on this page; --full writes them out.")})
+		}
 	}
 	return s
 }
@@ -208,18 +235,19 @@ func (f *findings) names() []row {
 // quantities are the rows of what the action is made of, stability beside it.
 func (f *findings) quantities() []row {
 	var rows []row
-	if f.Single != nil {
-		rows = singleRows(f.Single)
-	} else {
+	switch {
+	case f.Single != nil:
+		rows = f.shortSpeed(singleRows(f.Single))
+	case f.Several != nil:
 		rows = severalRows(f.Several)
 	}
 	var weak []phrase
 	for _, s := range f.Stability {
 		if s.Concern == reduce.StrongCoupling {
-			weak = append(weak, compare(show.Elem(s.Condition), equals, show.Int(0)))
+			weak = append(weak, f.vanishing(s.Condition))
 			continue
 		}
-		rows = place(rows, s)
+		rows = place(rows, s, f.full)
 	}
 	if len(weak) > 0 {
 		rows = append(rows, row{label: words("strong coupling"), value: join("", words("where "), join(" or ", weak...))})
@@ -275,16 +303,16 @@ func severalRows(s *reduce.Several) []row {
 
 // place puts a statement on stability beside the quantity it is about, or into a row of its
 // own.
-func place(rows []row, s reduce.Statement) []row {
+func place(rows []row, s reduce.Statement, full bool) []row {
 	for _, label := range besides[s.Concern] {
 		for i := range rows {
 			if len(rows[i].label) == 1 && rows[i].label[0].words == label && rows[i].note == nil {
-				rows[i].note = verdict(s)
+				rows[i].note = verdict(s, full)
 				return rows
 			}
 		}
 	}
-	return append(rows, row{label: words(ownLabel[s.Concern]), value: verdict(s)})
+	return append(rows, row{label: ownLabel[s.Concern], value: verdict(s, full)})
 }
 
 // besides lists the rows that a statement may stand beside, the best first.
@@ -295,13 +323,22 @@ var besides = map[reduce.Concern][]string{
 	reduce.Growth:       {"sound speed²"},
 }
 
-var ownLabel = map[reduce.Concern]string{
-	reduce.Ghost: "kinetic matrix", reduce.GradientSign: "large k", reduce.MassSign: "small k",
-	reduce.Ostrogradsky: "higher order", reduce.Growth: "large k",
+// ownLabel is the label of a statement in a row of its own.
+var ownLabel = map[reduce.Concern]phrase{
+	reduce.Ghost:        words("kinetic matrix"),
+	reduce.GradientSign: join("", words("large "), maths(show.Symbol("k", 0))),
+	reduce.MassSign:     join("", words("small "), maths(show.Symbol("k", 0))),
+	reduce.Ostrogradsky: words("higher order"),
+	reduce.Growth:       join("", words("large "), maths(show.Symbol("k", 0))),
+}
+
+// coefficientName is the coefficient whose sign a statement is about.
+var coefficientName = map[reduce.Concern]string{
+	reduce.Ghost: "kinetic coefficient", reduce.GradientSign: "gradient coefficient", reduce.MassSign: "mass coefficient",
 }
 
 // verdict is a statement in words.
-func verdict(s reduce.Statement) phrase {
+func verdict(s reduce.Statement, full bool) phrase {
 	fault := map[reduce.Concern]string{
 		reduce.Ghost: "ghost", reduce.GradientSign: "gradient instability", reduce.MassSign: "tachyon",
 	}[s.Concern]
@@ -323,33 +360,91 @@ func verdict(s reduce.Statement) phrase {
 	}
 	var list []phrase
 	for _, c := range conditions {
+		if name, ok := coefficientName[s.Concern]; ok && !full && len(s.Minors) == 0 && c.Terms() > longCondition {
+			return words("no " + fault + " while the " + name + " is positive")
+		}
 		list = append(list, compare(show.Elem(c), greater, show.Int(0)))
 	}
 	return join("", words("no "+fault+" while "), join(" and ", list...))
 }
 
-// equations are the equation of motion and the canonical variable.
-func (f *findings) equations() []row {
+// vanishing is the condition that a factor of the kinetic coefficient vanishes.
+func (f *findings) vanishing(factor field.Elem) phrase {
+	if !f.full && f.Single != nil && f.Single.Kinetic != nil && factor.Terms() > longCondition {
+		return words("a longer factor of the kinetic coefficient vanishes")
+	}
+	return compare(show.Elem(factor), equals, show.Int(0))
+}
+
+// frame is (a/N̄)², which takes a ratio of coefficients to the conformal clock.
+func (f *findings) frame() show.Node {
+	return show.Elem(f.Model.A.Div(f.Model.Lapse).Pow(2))
+}
+
+// shortSpeed gives a long sound speed by the coefficients above it.
+func (f *findings) shortSpeed(rows []row) []row {
+	s := f.Single
+	if s.Kinetic == nil || s.SoundSpeed2 == nil || !f.long(*s.SoundSpeed2) {
+		return rows
+	}
+	last := &rows[len(rows)-1]
+	last.value = join("", maths(f.frame()), words(" gradient/kinetic"))
+	return rows
+}
+
+// equations are the equation of motion and the canonical variable; short, if one of them is
+// given by other expressions of the page.
+func (f *findings) equations() (rows []row, short bool) {
+	motion := f.motion()
+	if f.Single.Kinetic != nil && f.long(f.Single.EquationOfMotion...) {
+		motion, short = f.motionByCoefficients(), true
+	}
+	rows = []row{{label: words("equation of motion"), value: motion}}
+	freq, ok := f.Frequency2()
+	if !ok {
+		return rows, short
+	}
+	v := func(n int) show.Node { return show.Symbol("v", n) }
+	z2 := show.Power(show.Symbol("z", 0), 2)
+	curvature := show.Quotient(show.Symbol("z", 2), show.Symbol("z", 0))
+	omega2 := show.Elem(freq)
+	if f.Single.Mass != nil && f.Single.Mass.IsZero() && f.long(freq) {
+		omega2, short = show.Product(show.Power(show.Symbol("c_s", 0), 2), show.Power(show.Symbol("k", 0), 2)), true
+	}
+	mode := show.Sum(v(2), show.Product(show.Sum(omega2, show.Neg(curvature)), v(0)))
+	square, second := maths(show.Elem(*f.Single.ZSquared)), maths(show.Elem(*f.Single.ZppOverZ))
+	if f.Single.Kinetic != nil && f.long(*f.Single.ZSquared) {
+		square, short = join("", maths(show.Elem(f.Model.Lapse.Div(f.Model.A))), words(" kinetic")), true
+	}
+	if f.long(*f.Single.ZppOverZ) {
+		second, short = words("½(z²)''/z² − ¼((z²)'/z²)²"), true
+	}
+	canonical := join(", ",
+		compare(v(0), equals, show.Product(show.Symbol("z", 0), show.Symbol(f.Variable, 0))),
+		compare(mode, equals, show.Int(0)))
+	rows = append(rows,
+		row{label: words("canonical"), value: canonical, note: primes(f.Model.Clock)},
+		row{label: maths(z2), value: square},
+		row{label: maths(curvature), value: second})
+	return rows, short
+}
+
+// motion is Σ cᵢ u⁽ⁱ⁾ = 0.
+func (f *findings) motion() phrase {
 	var terms []show.LinearTerm
 	for i := len(f.Single.EquationOfMotion) - 1; i >= 0; i-- {
 		terms = append(terms, show.LinearTerm{Coef: f.Single.EquationOfMotion[i], Name: f.Variable, Order: i})
 	}
-	rows := []row{{label: words("equation of motion"), value: compare(show.Linear(terms), equals, show.Int(0))}}
-	freq, ok := f.Frequency2()
-	if !ok {
-		return rows
+	return compare(show.Linear(terms), equals, show.Int(0))
+}
+
+// motionByCoefficients is (𝒦u′)′ = 𝒢∂²u − ℳu in words.
+func (f *findings) motionByCoefficients() phrase {
+	out := join("", words("(kinetic "), maths(show.Symbol(f.Variable, 1)), words(")' = gradient "), maths(show.Spatial(f.Variable, 0, 2)))
+	if !f.Single.Mass.IsZero() {
+		out = join("", out, words(" − mass "), maths(show.Symbol(f.Variable, 0)))
 	}
-	v := func(n int) show.Node { return show.Symbol("v", n) }
-	curvature := show.Quotient(show.Symbol("z", 2), show.Symbol("z", 0))
-	mode := show.Sum(v(2), show.Product(show.Sum(show.Elem(freq), show.Neg(curvature)), v(0)))
-	canonical := join(", ",
-		compare(v(0), equals, show.Product(show.Symbol("z", 0), show.Symbol(f.Variable, 0))),
-		compare(mode, equals, show.Int(0)))
-	square := show.Power(show.Symbol("z", 0), 2)
-	return append(rows,
-		row{label: words("canonical"), value: canonical, note: primes(f.Model.Clock)},
-		row{label: maths(square), value: maths(show.Elem(*f.Single.ZSquared))},
-		row{label: maths(curvature), value: maths(show.Elem(*f.Single.ZppOverZ))})
+	return out
 }
 
 // primes says what the primes of the canonical equation are, where the clock has others.
@@ -367,17 +462,27 @@ func (f *findings) series() *section {
 	}
 	s := &section{heading: words("Series of the operator")}
 	for _, x := range f.expansions {
+		if x.In == "1/k" && isExact(x) { // as on large scales
+			continue
+		}
 		s.blocks = append(s.blocks, block{sentence: expansionTitle(x)}, block{rows: f.expansionRows(x)})
 	}
 	return s
 }
 
+// isExact reports whether an expansion leaves nothing out.
+func isExact(x *reduce.Expansion) bool {
+	return !slices.ContainsFunc(x.Coefs, func(c series.Coefficient) bool { return !c.Exact })
+}
+
 func expansionTitle(x *reduce.Expansion) phrase {
-	switch x.In {
-	case "k":
+	switch {
+	case x.In == "k" && isExact(x):
+		return join("", words("in powers of "), maths(show.Symbol("k", 0)), words(": nothing is left out"))
+	case x.In == "k":
 		return join("", words("large scales, to order "), maths(wave(x.Order)))
-	case "1/k":
-		return join("", words("small scales, to order 1/"), maths(wave(x.Order)))
+	case x.In == "1/k":
+		return join("", words("small scales, to order "), maths(leftOut(x, -x.Order)))
 	}
 	var names []phrase
 	for _, n := range strings.Split(x.In, ", ") {

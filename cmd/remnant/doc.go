@@ -26,6 +26,9 @@ the equation of motion and the canonical variable. The flags are:
 		at the type Document of package reduce, and stable.
 	--steps
 		Show the action after each step of the elimination.
+	--full
+		Write out expressions that are long and follow from others on the page. JSON
+		always holds them.
 	--series ORDER
 		Expand what remains in powers of the wave number on large and on small scales,
 		and in the parameters that the model declares small. Without the flag a model

@@ -106,7 +106,7 @@ func (w *latexWriter) formula(f formula) string {
 var latexMarks = func() *strings.Replacer {
 	pairs := []string{
 		`\`, `\textbackslash{}`, "{", `\{`, "}", `\}`, "$", `\$`, "&", `\&`, "#", `\#`, "_", `\_`, "%", `\%`,
-		"~", `\textasciitilde{}`, "^", `\textasciicircum{}`, "–", "--", "—", "---", "−", "$-$", "²", "$^2$", "³", "$^3$",
+		"~", `\textasciitilde{}`, "^", `\textasciicircum{}`, "–", "--", "—", "---", "−", "$-$", "²", "$^2$", "³", "$^3$", "½", `$\frac{1}{2}$`, "¼", `$\frac{1}{4}$`,
 		"ℋ", `$\mathcal{H}$`, "∂", `$\partial$`, "≠", `$\neq$`, "…", `\dots{}`,
 	}
 	for _, l := range show.Letters() {

@@ -17,6 +17,7 @@ type reduceOptions struct {
 	limits
 	format string
 	steps  bool
+	full   bool
 	series int
 	at     string
 	output string
@@ -53,6 +54,7 @@ func reduceCommand(std streams) *cobra.Command {
 	flags := cmd.Flags()
 	flags.StringVar(&o.format, "format", "text", "text, latex, json or markdown")
 	flags.BoolVar(&o.steps, "steps", false, "show the action after each step")
+	flags.BoolVar(&o.full, "full", false, "write out long expressions that follow from others")
 	flags.IntVar(&o.series, "series", noSeries, "expand what remains up to this `order`")
 	flags.StringVar(&o.at, "at", "", "give exact values at a `point`: \"H = 1/10; k = 2\", or @FILE")
 	flags.StringVarP(&o.output, "output", "o", "", "write to this `file`")
@@ -137,7 +139,7 @@ func (o *reduceOptions) find(std streams, path string, b *budget.Budget) (*findi
 	if err != nil {
 		return nil, err
 	}
-	f := &findings{Result: r, steps: o.steps}
+	f := &findings{Result: r, steps: o.steps, full: o.full}
 	if f.expansions, err = o.expansions(r); err != nil {
 		return nil, err
 	}

@@ -261,7 +261,7 @@ func columns(s string) int {
 var asciiMarks = func() *strings.Replacer {
 	pairs := []string{
 		"–", "-", "—", "-", "−", "-", "‐", "-", "‑", "-", "’", "'", "‘", "'", "“", `"`, "”", `"`, "…", "...",
-		"²", "^2", "³", "^3", "·", "*", "×", "x", "∂", "d", "ℋ", "H", hard, " ",
+		"²", "^2", "³", "^3", "½", "1/2 ", "¼", "1/4 ", "≠", "!=", "·", "*", "×", "x", "∂", "d", "ℋ", "H", hard, " ",
 	}
 	for _, l := range show.Letters() {
 		pairs = append(pairs, l.Unicode, l.ASCII)
