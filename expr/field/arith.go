@@ -209,15 +209,15 @@ func (e Elem) Inv() Elem {
 	if e.IsZero() {
 		panic("field: division by zero")
 	}
-	f := e.f
+	f, e := e.f, e.live()
 	up, num := f.rationalise(e.num)
 	content, powers := f.factorise(num)
 	out := Elem{f: f, num: up.num, den: denominator{new(big.Int).Abs(content), powers}}
 	if content.Sign() < 0 {
 		out.num = out.num.Neg()
 	}
-	e = e.live()
-	for _, p := range e.den.pow {
+	// factorise may have split factors below e; its numerator stays the one that was inverted
+	for _, p := range f.livePowers(e.den.pow) {
 		out.num = f.mulPower(out.num, p.id, p.exp)
 	}
 	if e.den.int != nil {

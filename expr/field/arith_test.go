@@ -36,11 +36,11 @@ func axioms(t *rapid.T, w *world) {
 }
 
 func TestFieldAxioms(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) { axioms(t, newWorld()) })
+	check(t, func(t *rapid.T) { axioms(t, newWorld()) })
 }
 
 func TestFieldAxiomsWithRootsAndFunctions(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) { axioms(t, newWorld().adjoin()) })
+	check(t, func(t *rapid.T) { axioms(t, newWorld().adjoin()) })
 }
 
 // random values of the generators modulo a prime, from a seed.
@@ -56,10 +56,10 @@ func point(seed uint64) func(Gen) uint64 {
 // Values modulo 2⁶¹ − 1 are a ring homomorphism, and tell unequal elements apart.
 func TestValuesModuloPrime(t *testing.T) {
 	const m = poly.Mersenne61
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		a, b := w.drawElem(t, "a"), w.drawElem(t, "b")
-		at := point(rapid.Uint64().Draw(t, "seed"))
+		at := point(uint64(rapid.Uint32().Draw(t, "seed")))
 		value := func(e Elem) uint64 {
 			v, ok := e.EvalMod(m, at)
 			if !ok {
@@ -85,8 +85,43 @@ func TestValuesModuloPrime(t *testing.T) {
 	})
 }
 
+// A factor below is split by what is above while the fraction is inverted, or its sign is
+// found: u = m² − H² is known as one factor when (m + H)/u comes.
+func TestFactorsSplitOnTheWay(t *testing.T) {
+	for _, use := range []func(t *testing.T, e, want Elem){
+		func(t *testing.T, e, want Elem) { same(t, "inverse", e.Inv(), want.Inv()) },
+		func(t *testing.T, e, want Elem) { same(t, "square root", mustSqrt(t, e).Pow(2), want) },
+		func(t *testing.T, e, want Elem) { same(t, "derivative", e.D(), want.D()) },
+		func(t *testing.T, e, want Elem) { same(t, "lowest terms", e.Lowest(), want) },
+		func(t *testing.T, e, want Elem) {
+			if e.Sign() != Unknown || e.Neg().Sign() != Unknown {
+				t.Errorf("%v has sign %d", e, e.Sign())
+			}
+		},
+	} {
+		w := newWorld()
+		m, h := w.f.Gen(w.m), w.f.Gen(w.h)
+		u := m.Pow(2).Sub(h.Pow(2)).Inv()
+		e := u.Mul(m.Add(h)) // not cancelled: m + H is no factor yet
+		if e.Num().IsOne() {
+			t.Fatal("the fraction was cancelled too early to test anything")
+		}
+		use(t, e, m.Sub(h).Inv())
+		coprime(t, w.f)
+	}
+}
+
+func mustSqrt(t *testing.T, e Elem) Elem {
+	t.Helper()
+	s, err := e.f.Sqrt(e)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return s
+}
+
 func TestLowest(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		a, b, c := w.drawPoly(t, "a"), w.drawPoly(t, "b"), w.drawPoly(t, "c")
 		if b.IsZero() || c.IsZero() {
@@ -104,7 +139,7 @@ func TestLowest(t *testing.T) {
 
 // Factors multiply back, are pairwise coprime and stand in the promised order.
 func TestFactors(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		e := w.drawElem(t, "e")
 		if e.IsZero() {
@@ -158,7 +193,7 @@ func TestSignsAndWhatMayVanish(t *testing.T) {
 
 // A sign holds for every value that respects the declarations, where it is not zero.
 func TestSignIsTrue(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		w.elems = []Elem{w.f.Gen(w.m), w.f.Gen(w.k), w.f.Gen(w.a), w.f.Gen(w.h)}
 		e := w.drawPoly(t, "e")

@@ -76,10 +76,10 @@ func (e Elem) Sign() Sign {
 	if e.IsZero() {
 		return Unknown
 	}
-	f := e.f
+	f, e := e.f, e.live()
 	content, powers := f.factorise(e.num)
 	s := Sign(content.Sign())
-	for _, p := range append(powers, e.live().den.pow...) {
+	for _, p := range append(powers, f.livePowers(e.den.pow)...) {
 		if p.exp%2 != 0 {
 			s *= f.polySign(f.factors[p.id].p)
 		} else if len(f.roots) > 0 && f.holdsRoot(f.factors[p.id].p) {

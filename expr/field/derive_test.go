@@ -21,15 +21,15 @@ func derivation(t *rapid.T, w *world) {
 }
 
 func TestDerivation(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) { derivation(t, newWorld()) })
+	check(t, func(t *rapid.T) { derivation(t, newWorld()) })
 }
 
 func TestDerivationWithRootsAndFunctions(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) { derivation(t, newWorld().adjoin()) })
+	check(t, func(t *rapid.T) { derivation(t, newWorld().adjoin()) })
 }
 
 func TestDerivationModuloRelations(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		w.relate(t)
 		derivation(t, w)
@@ -81,7 +81,7 @@ func TestTaylorOfDerivative(t *testing.T) {
 	const m = poly.Mersenne61
 	const order = 3
 	lucky := 0
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		if rapid.Bool().Draw(t, "roots and functions") {
 			w.adjoin()

@@ -22,7 +22,7 @@ func relate(t *testing.T, errs ...error) {
 // D respects relations: reducing before or after it is the same. So do Taylor series along
 // the background, by which a reduced element is told from a wrong one.
 func TestReductionRespectsDerivation(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		w.elems = append(w.elems, w.f.Jet(w.a, 1), w.f.Jet(w.a, 2), w.f.Jet(w.h, 2), w.f.Jet(w.phi, 2), w.f.Jet(w.phi, 3))
 		e := w.drawElem(t, "e")

@@ -89,7 +89,7 @@ func TestSignThroughEarlierRoots(t *testing.T) {
 }
 
 func TestRootLaws(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		x, y := w.drawElem(t, "x"), w.drawElem(t, "y")
 		root := func(e Elem) Elem {
@@ -118,7 +118,7 @@ func TestRootLaws(t *testing.T) {
 
 // For positive x and y the roots multiply without a sign.
 func TestRootOfProduct(t *testing.T) {
-	rapid.Check(t, func(t *rapid.T) {
+	check(t, func(t *rapid.T) {
 		w := newWorld()
 		w.elems = []Elem{w.f.Gen(w.m), w.f.Gen(w.k), w.f.Gen(w.a), w.f.Gen(w.h).Pow(2)}
 		positive := func(name string) Elem {

@@ -1,13 +1,28 @@
 package field
 
 import (
+	"context"
 	"math/big"
 	"slices"
+	"testing"
 
 	"pgregory.net/rapid"
 
+	"remnant/expr/budget"
 	"remnant/expr/poly"
 )
+
+// check runs a property on random elements and gives up those that grow too large to be
+// worth their time.
+func check(t *testing.T, property func(*rapid.T)) {
+	rapid.Check(t, func(t *rapid.T) {
+		var stopped error
+		func() {
+			defer budget.Catch(&stopped)
+			property(t)
+		}()
+	})
+}
 
 // world is a field to test with: constants m > 0 and q, k, functions a > 0, H, φ with jets,
 // and free functions P(φ, X), X = φ'²/2, and V(φ).
@@ -20,7 +35,7 @@ type world struct {
 }
 
 func newWorld() *world {
-	f := New(nil)
+	f := New(budget.New(context.Background(), 3000))
 	w := &world{f: f}
 	w.m = f.Constant("m", Positive)
 	w.q = f.Constant("q", Unknown)
