@@ -2,7 +2,10 @@
 
 package poly
 
-import "math/big"
+import (
+	"math"
+	"math/big"
+)
 
 // Neg is −p.
 func (p Poly) Neg() Poly {
@@ -46,42 +49,48 @@ func merge(p, q Poly, sign int64) Poly {
 	switch {
 	case p.d.bg != nil || q.d.bg != nil:
 		mergeBig(&b, pe, p.d.bigs(), qe, q.d.bigs(), sign)
-	case l.words == 1:
-		mergeWord1(&b, pe, p.d.co, qe, q.d.co, sign)
+	case l.words == 1 && mergeWord1(&b, pe, p.d.co, qe, q.d.co, sign):
 	default:
 		mergeWord(&b, pe, p.d.co, qe, q.d.co, sign)
 	}
 	return b.canonical()
 }
 
-// mergeWord1 merges word coefficients on monomials of one word.
-func mergeWord1(b *builder, pe []uint64, pc []int64, qe []uint64, qc []int64, sign int64) {
-	i, j := 0, 0
+// mergeWord1 merges word coefficients on monomials of one word; it gives up, leaving b
+// empty, if a sum is no word.
+func mergeWord1(b *builder, pe []uint64, pc []int64, qe []uint64, qc []int64, sign int64) bool {
+	n := len(pe) + len(qe)
+	e, c := b.exps[:n], b.co[:n]
+	i, j, k := 0, 0, 0
 	for i < len(pe) && j < len(qe) {
 		switch x, y := pe[i], qe[j]; {
 		case x > y:
-			b.exps = append(b.exps, x)
-			b.word(pc[i])
-			i++
+			e[k], c[k] = x, pc[i]
+			i, k = i+1, k+1
 		case x < y:
-			b.exps = append(b.exps, y)
-			b.word(sign * qc[j])
-			j++
+			e[k], c[k] = y, sign*qc[j]
+			j, k = j+1, k+1
 		default:
-			if b.sum(pc[i], sign*qc[j]) {
-				b.exps = append(b.exps, x)
+			v, w := pc[i], sign*qc[j]
+			s := v + w
+			if (v^s)&(w^s) < 0 || s == math.MinInt64 {
+				return false
 			}
+			e[k], c[k] = x, s
 			i, j = i+1, j+1
+			if s != 0 {
+				k++
+			}
 		}
 	}
-	for ; i < len(pe); i++ {
-		b.exps = append(b.exps, pe[i])
-		b.word(pc[i])
+	copy(c[k:], pc[i:])
+	k += copy(e[k:], pe[i:])
+	copy(e[k:], qe[j:])
+	for ; j < len(qe); j, k = j+1, k+1 {
+		c[k] = sign * qc[j]
 	}
-	for ; j < len(qe); j++ {
-		b.exps = append(b.exps, qe[j])
-		b.word(sign * qc[j])
-	}
+	b.exps, b.co = e[:k], c[:k]
+	return true
 }
 
 // sum appends the coefficient x + y and reports whether it is not zero.
@@ -91,7 +100,7 @@ func (b *builder) sum(x, y int64) bool {
 		return false
 	}
 	// Overflow, or −2⁶³, which is no word coefficient.
-	if (x^s)&(y^s) < 0 || s == -s {
+	if (x^s)&(y^s) < 0 || s == math.MinInt64 {
 		var a acc
 		a.addWord(x)
 		a.addWord(y)

@@ -23,6 +23,11 @@ func newBuilder(l *layout, n int) builder {
 	return builder{lay: l, exps: make([]uint64, 0, n*l.words), co: make([]int64, 0, n)}
 }
 
+// reserve makes room for n terms in an empty builder.
+func (b *builder) reserve(n int) {
+	b.exps, b.co = make([]uint64, 0, n*b.lay.words), make([]int64, 0, n)
+}
+
 func (b *builder) len() int {
 	if b.bg != nil {
 		return len(b.bg)

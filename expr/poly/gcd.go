@@ -55,7 +55,11 @@ func (o Ops) gcdPrimitive(p, q Poly) Poly {
 	switch {
 	case p.IsConst() || q.IsConst():
 		return one
-	case p.Equal(q):
+	case p.d.len() > q.d.len():
+		p, q = q, p
+	}
+	// That one divides the other is the commonest case, and mostly refuted at once.
+	if _, ok := o.DivExact(q, p); ok {
 		return p
 	}
 	if g, ok := o.gcdModular(p, q); ok {

@@ -39,8 +39,8 @@ func (o Ops) gcdModular(p, q Poly) (g Poly, ok bool) {
 		if !c.tighten(newPrimeField(primeAt(try))) {
 			continue
 		}
-		if g, ok := c.settle(try == 0); ok {
-			return g, true
+		if slices.Max(c.bound) == 0 {
+			return one, true
 		}
 		if g, ok := c.zippel(try); ok {
 			return g, true
@@ -136,28 +136,6 @@ func (f *primeField) univariate(d *data, vars []Var, at func(Var) uint64) [][]ui
 		}
 	}
 	return out
-}
-
-// settle decides by the bounds alone: all zero, or those of p or q itself, which then is
-// tried as the gcd if try is set.
-func (c *candidates) settle(try bool) (Poly, bool) {
-	if !slices.ContainsFunc(c.bound, func(b int) bool { return b > 0 }) {
-		return one, true
-	}
-	if !try {
-		return Poly{}, false
-	}
-	if slices.Equal(c.bound, c.dp) && len(c.vars) == len(c.p.d.lay.vars) {
-		if _, ok := c.o.DivExact(c.q, c.p); ok {
-			return c.p, true
-		}
-	}
-	if slices.Equal(c.bound, c.dq) && len(c.vars) == len(c.q.d.lay.vars) {
-		if _, ok := c.o.DivExact(c.p, c.q); ok {
-			return c.q, true
-		}
-	}
-	return Poly{}, false
 }
 
 // zippel runs the sparse algorithm, with the try-th prime first.

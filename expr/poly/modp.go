@@ -79,7 +79,10 @@ func (m Modulus) Inv(a uint64) uint64 {
 
 // FromInt is the residue of c.
 func (m Modulus) FromInt(c int64) uint64 {
-	r := abs(c) % uint64(m)
+	r := abs(c)
+	if r >= uint64(m) {
+		r %= uint64(m)
+	}
 	if c < 0 {
 		return m.Neg(r)
 	}

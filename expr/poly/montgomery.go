@@ -110,12 +110,7 @@ func (f *primeField) coefs(d *data) []uint64 {
 			out[i] = f.in(Modulus(f.p).FromBig(d.bg[i]))
 			continue
 		}
-		c := d.co[i]
-		m := f.mul(abs(c)%f.p, f.two)
-		if c < 0 {
-			m = f.sub(0, m)
-		}
-		out[i] = m
+		out[i] = f.in(Modulus(f.p).FromInt(d.co[i]))
 	}
 	return out
 }

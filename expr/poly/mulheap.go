@@ -101,16 +101,24 @@ func (h *rowHeap) pop() int32 {
 	return chain
 }
 
+// stackRows is the number of rows up to which the heap needs no allocation.
+const stackRows = 32
+
 // mulHeap multiplies word coefficients on one-word monomials.
 func (o Ops) mulHeap(b *builder, p, q operand) {
 	pe, pc, qe, qc := p.exps, p.co, q.exps, q.co
 	n := len(pe)
-	h := rowHeap{heap: make([]entry, 0, n), next: make([]int32, n)}
-	at := make([]int32, n) // at[i] is the position of row i's head in q
-	ready := make([]int32, 0, n)
+	var heapBuf [stackRows]entry
+	var rowBuf [3 * stackRows]int32
+	heap, row := heapBuf[:0], rowBuf[:]
+	if n > stackRows {
+		heap, row = make([]entry, 0, n), make([]int32, 3*n)
+	}
+	h := rowHeap{heap: heap, next: row[:n]}
+	at := row[n : 2*n] // at[i] is the position of row i's head in q
+	ready := row[2*n : 2*n]
 	small := maxBits(pc)+maxBits(qc)+bits.Len(uint(n)) <= 63
-	b.exps = make([]uint64, 0, n+len(qe))
-	b.co = make([]int64, 0, n+len(qe))
+	b.reserve(min(n*len(qe), n+2*len(qe)))
 	h.push(pe[0]+qe[0], 0)
 	for len(h.heap) > 0 {
 		key := h.heap[0].key
@@ -134,7 +142,7 @@ func (o Ops) mulHeap(b *builder, p, q operand) {
 			b.exps = append(b.exps, key)
 			b.acc(&a)
 		}
-		if len(b.exps)%checkEvery == 0 {
+		if len(b.exps)%checkEvery == checkEvery-1 {
 			o.Budget.Check(len(b.exps))
 		}
 		for _, r := range ready {
@@ -270,7 +278,7 @@ func (o Ops) mulRows(b *builder, p, q operand, sum func(next func() (int, int, b
 		if sum(next) {
 			b.exps = append(b.exps, top...)
 		}
-		if b.len()%checkEvery == 0 {
+		if b.len()%checkEvery == checkEvery-1 {
 			o.Budget.Check(b.len())
 		}
 		for _, r := range ready {
