@@ -166,7 +166,7 @@ func (e *elaborator) arguments(f *Function) ([]string, []field.Elem) {
 
 func (e *elaborator) argument(a *Argument, f *Function) field.Elem {
 	name := &Name{node{a.Word.Span()}, a.Word.Text, a.Word.Name()}
-	sym, declared := e.symbols[name.Name]
+	_, declared := e.symbols[name.Name]
 	switch {
 	case name.Name == "X" && (a.Of != nil || !declared):
 		return e.kinetic(a, f)
@@ -177,7 +177,7 @@ func (e *elaborator) argument(a *Argument, f *Function) field.Elem {
 	case name.Name == "t":
 		return e.k.Gen(e.time())
 	}
-	sym = e.lookup(name)
+	sym := e.lookup(name)
 	if sym.kind != symbolBackground && sym.kind != symbolConstant {
 		panic(newFault(diag.WrongArguments, name.At, fmt.Sprintf("'%s' is %s and cannot be an argument of a function", name.Text, kindNames[sym.kind]),
 			"functions depend on functions of time, X, R or t"))

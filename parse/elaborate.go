@@ -205,7 +205,7 @@ func (e *elaborator) lagrangian(s *Statement) {
 }
 
 func (e *elaborator) wrongOrder(degree int, at diag.Span) *fault {
-	return newFault(diag.WrongOrder, at, fmt.Sprintf("'%s' is of order %d in the perturbations", e.src.Slice(at), degree),
+	return newFault(diag.WrongOrder, at, fmt.Sprintf("'%s' is of order %d in the perturbations", e.quote(at), degree),
 		"every term of a quadratic Lagrangian is of order 2")
 }
 
@@ -215,7 +215,7 @@ func (e *elaborator) unused(lagrangian Expr) {
 	e.collectNames(lagrangian, used)
 	for _, f := range e.model.Fields {
 		if !used[f.Name] {
-			e.report(newFault(diag.FieldUnused, f.Span, fmt.Sprintf("'%s' is declared and never used", e.src.Slice(f.Span)),
+			e.report(newFault(diag.FieldUnused, f.Span, fmt.Sprintf("'%s' is declared and never used", e.quote(f.Span)),
 				"every field stands in the Lagrangian"))
 		}
 	}

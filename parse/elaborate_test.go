@@ -284,7 +284,9 @@ func TestPoint(t *testing.T) {
 	if err != nil || len(lines) != 3 {
 		t.Errorf("%d assignments from lines, %v", len(lines), err)
 	}
+	m = load(t, "background a, phi\nfields u\nlet w = "+strings.Repeat(" ", 40)+"a*u\nlagrangian quadratic = w'^2\n")
 	for _, c := range []struct{ text, want string }{
+		{"H = w", "--at:1:5: 'w' is a perturbation and cannot stand in a value"},
 		{"x = 1", "--at:1:1: 'x' is not declared"},
 		{"H", "--at:1:2: a value is missing"},
 		{"H = ", "--at:1:4: the expression ends too early"},

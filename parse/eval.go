@@ -37,7 +37,7 @@ func (e *elaborator) background(x Expr, what string) field.Elem {
 				break
 			}
 		}
-		panic(newFault(diag.NotBackground, at, fmt.Sprintf("'%s' is a perturbation and cannot stand in %s", e.src.Slice(at), what), "constants and functions of time stand here"))
+		panic(newFault(diag.NotBackground, at, fmt.Sprintf("'%s' is a perturbation and cannot stand in %s", e.quote(at), what), "constants and functions of time stand here"))
 	}
 	return v
 }
@@ -102,7 +102,7 @@ func (e *elaborator) evalName(n *Name) form {
 	case symbolField:
 		return perturbation(e.k, s.index, n.At)
 	case symbolLet:
-		return e.letValue(s)
+		return e.letValue(s).standing(n.At)
 	case symbolFormFactor:
 		panic(e.formFactor(n))
 	}
@@ -118,7 +118,7 @@ func (e *elaborator) evalName(n *Name) form {
 }
 
 func (e *elaborator) formFactor(x Expr) *fault {
-	return newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("'%s' is a form factor, which is not yet supported", String(x)), "powers of box can be used: box^2[zeta]")
+	return newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("'%s' is a form factor, which is not yet supported", brief(x)), "powers of box can be used: box^2[zeta]")
 }
 
 func (e *elaborator) indexed(n *Index) *fault {
@@ -130,7 +130,7 @@ func (e *elaborator) indexed(n *Index) *fault {
 			return e.unknown(name)
 		}
 	}
-	return newFault(diag.NoMeaning, n.At, fmt.Sprintf("'%s' is no tensor: it takes no indices after a dot", String(n.X)), "a space derivative is written with a comma: zeta,i")
+	return newFault(diag.NoMeaning, n.At, fmt.Sprintf("'%s' is no tensor: it takes no indices after a dot", brief(n.X)), "a space derivative is written with a comma: zeta,i")
 }
 
 // letValue is what an abbreviation stands for. While relations are being added it is
@@ -187,14 +187,14 @@ func (e *elaborator) mul(f, g form, at diag.Span) form {
 func (e *elaborator) divisor(x Expr, why string) field.Elem {
 	v, ok := e.eval(x).elem()
 	if !ok {
-		panic(newFault(diag.DivideByField, x.Span(), fmt.Sprintf("'%s' holds a perturbation and cannot be divided by", String(x)), "a Lagrangian is divided by constants and functions of time only"))
+		panic(newFault(diag.DivideByField, x.Span(), fmt.Sprintf("'%s' holds a perturbation and cannot be divided by", brief(x)), "a Lagrangian is divided by constants and functions of time only"))
 	}
 	return e.inverse(v, x, why)
 }
 
 func (e *elaborator) inverse(v field.Elem, x Expr, why string) field.Elem {
 	if v.IsZero() {
-		panic(newFault(diag.DivideByZero, x.Span(), fmt.Sprintf("'%s' is zero and cannot be divided by", String(x)), e.zeroHint(x)))
+		panic(newFault(diag.DivideByZero, x.Span(), fmt.Sprintf("'%s' is zero and cannot be divided by", brief(x)), e.zeroHint(x)))
 	}
 	e.k.AssumeNonzero(v, why)
 	return v.Inv()
@@ -246,21 +246,13 @@ func (e *elaborator) exponent(x Expr) *big.Rat {
 			return r
 		}
 	}
-	panic(newFault(diag.BadExponent, x.Span(), fmt.Sprintf("'%s' is no rational number", String(x)), "an exponent is a whole number or a fraction such as (3/2)"))
+	panic(newFault(diag.BadExponent, x.Span(), fmt.Sprintf("'%s' is no rational number", brief(x)), "an exponent is a whole number or a fraction such as (3/2)"))
 }
 
 func (e *elaborator) limitPower(p *big.Int, n *Power) {
 	if p.CmpAbs(big.NewInt(maxExponent)) > 0 {
-		panic(newFault(diag.ExponentTooLarge, n.Exponent.Span(), fmt.Sprintf("the exponent '%s' is too large", shorten(String(n.Exponent))), "exponents up to 1000 are read"))
+		panic(newFault(diag.ExponentTooLarge, n.Exponent.Span(), fmt.Sprintf("the exponent '%s' is too large", brief(n.Exponent)), "exponents up to 1000 are read"))
 	}
-}
-
-// shorten keeps what is quoted in a message short.
-func shorten(text string) string {
-	if r := []rune(text); len(r) > 24 {
-		return string(r[:20]) + "…"
-	}
-	return text
 }
 
 // limitSize refuses powers of powers that only grow, before they do.
@@ -284,7 +276,7 @@ func (e *elaborator) limitSize(v field.Elem, p int, n *Power) {
 func (e *elaborator) powerOfForm(base form, r *big.Rat, n *Power) form {
 	if !r.IsInt() || r.Sign() < 0 {
 		if r.Sign() < 0 {
-			panic(newFault(diag.DivideByField, n.Base.Span(), fmt.Sprintf("'%s' holds a perturbation and cannot be divided by", String(n.Base)), "a Lagrangian is divided by constants and functions of time only"))
+			panic(newFault(diag.DivideByField, n.Base.Span(), fmt.Sprintf("'%s' holds a perturbation and cannot be divided by", brief(n.Base)), "a Lagrangian is divided by constants and functions of time only"))
 		}
 		panic(newFault(diag.BadExponent, n.Exponent.Span(), "a perturbation has whole powers only", "every term of a quadratic Lagrangian is of order 2"))
 	}
@@ -311,7 +303,7 @@ func (e *elaborator) evalFactorial(n *Factorial) form {
 			return background(e.k.Rat(new(big.Rat).SetInt(product)), n.At)
 		}
 	}
-	panic(newFault(diag.BadExponent, n.X.Span(), fmt.Sprintf("'%s' is no whole number", String(n.X)), "a factorial is taken of a whole number"))
+	panic(newFault(diag.BadExponent, n.X.Span(), fmt.Sprintf("'%s' is no whole number", brief(n.X)), "a factorial is taken of a whole number"))
 }
 
 func (e *elaborator) limitOrder(n int, at diag.Span) {
@@ -340,6 +332,16 @@ func (f form) placed(at diag.Span) form {
 	return f
 }
 
+// standing returns f with all terms pointing at one place: an abbreviation is refused
+// where it is used.
+func (f form) standing(at diag.Span) form {
+	terms := slices.Clone(f.terms)
+	for i := range terms {
+		terms[i].at = at
+	}
+	return form{terms}
+}
+
 func (e *elaborator) limitJets(f form, at diag.Span) {
 	for _, t := range f.terms {
 		e.limitOrder(max(t.u.Time, t.v.Time, t.u.Space, t.v.Space), at)
@@ -363,7 +365,7 @@ func (e *elaborator) evalDeriv(n *Deriv) form {
 		}
 	}
 	if _, high := f.degrees(); high == 0 {
-		panic(newFault(diag.SpaceOfBackground, n.Label.At, fmt.Sprintf("'%s' depends on time alone and cannot be differentiated by '%s'", String(n.X), n.Label.Text), "perturbations have space derivatives"))
+		panic(newFault(diag.SpaceOfBackground, n.Label.At, fmt.Sprintf("'%s' depends on time alone and cannot be differentiated by '%s'", brief(n.X), n.Label.Text), "perturbations have space derivatives"))
 	}
 	for range n.Label.Text {
 		f = f.dx()
@@ -384,5 +386,5 @@ func (e *elaborator) notAnIndex(n *Deriv) *fault {
 			hint += a
 		}
 	}
-	return newFault(diag.NotAnIndex, n.Label.At, fmt.Sprintf("'%s' cannot be differentiated by '%s'", String(n), n.Label.Text), hint)
+	return newFault(diag.NotAnIndex, n.Label.At, fmt.Sprintf("'%s' cannot be differentiated by '%s'", brief(n), n.Label.Text), hint)
 }

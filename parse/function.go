@@ -109,7 +109,7 @@ func (e *elaborator) checkArguments(n *Call, s *symbol) {
 		}
 		want += a
 	}
-	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' has other arguments than those declared", String(n)),
+	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' has other arguments than those declared", brief(n)),
 		fmt.Sprintf("functions stand for their values on the background: %s) or %s", want, s.name)))
 }
 
@@ -144,8 +144,8 @@ func (e *elaborator) evalCall(n *Call) form {
 		}
 	}
 	e.eval(n.Fun) // an unknown name or a form factor has its own message
-	panic(newFault(diag.NotAFunction, n.At, fmt.Sprintf("'%s' is not declared as a function", String(n.Fun)),
-		"multiplication is written: "+shorten(String(n.Fun))+"*(…)"))
+	panic(newFault(diag.NotAFunction, n.At, fmt.Sprintf("'%s' is not declared as a function", brief(n.Fun)),
+		"multiplication is written: "+brief(n.Fun)+"*(…)"))
 }
 
 func (e *elaborator) kineticCall(n *Call) form {
@@ -154,7 +154,7 @@ func (e *elaborator) kineticCall(n *Call) form {
 			return background(e.kineticOf(s.gen), n.At)
 		}
 	}
-	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' is no kinetic term", String(n)), "the form is X(phi) with a scalar declared in 'background'"))
+	panic(newFault(diag.WrongArguments, n.At, fmt.Sprintf("'%s' is no kinetic term", brief(n)), "the form is X(phi) with a scalar declared in 'background'"))
 }
 
 func (e *elaborator) elementary(n *Call, name string) form {
@@ -163,7 +163,7 @@ func (e *elaborator) elementary(n *Call, name string) form {
 	}
 	v, ok := e.eval(n.Args[0]).elem()
 	if !ok {
-		panic(newFault(diag.NotBackground, n.Args[0].Span(), fmt.Sprintf("'%s' is a perturbation and cannot stand in an elementary function", String(n.Args[0])), "constants and functions of time stand here"))
+		panic(newFault(diag.NotBackground, n.Args[0].Span(), fmt.Sprintf("'%s' is a perturbation and cannot stand in an elementary function", brief(n.Args[0])), "constants and functions of time stand here"))
 	}
 	out, err := e.k.Elementary(name, v)
 	if err != nil {

@@ -50,7 +50,7 @@ func often(n int) string {
 }
 
 func indexFault(kind diag.Kind, u use, count string) *fault {
-	return newFault(kind, u.at, fmt.Sprintf("'%s' cannot be differentiated by '%c'", String(u.of), u.letter),
+	return newFault(kind, u.at, fmt.Sprintf("'%s' cannot be differentiated by '%c'", brief(u.of), u.letter),
 		fmt.Sprintf("index %c stands %s; every index must stand twice in a product", u.letter, count))
 }
 

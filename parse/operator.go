@@ -11,7 +11,7 @@ import (
 // apply lets an operator act on f. Factors compose, the last one acts first.
 func (e *elaborator) apply(operator Expr, f form) form {
 	if !hasBox(operator) {
-		panic(newFault(diag.NotAnOperator, operator.Span(), fmt.Sprintf("'%s' is no operator", String(operator)), "an operator contains box: (box - m^2)[zeta]; elsewhere brackets are round"))
+		panic(newFault(diag.NotAnOperator, operator.Span(), fmt.Sprintf("'%s' is no operator", brief(operator)), "an operator contains box: (box - m^2)[zeta]; elsewhere brackets are round"))
 	}
 	return e.act(operator, f)
 }
@@ -62,7 +62,7 @@ func (e *elaborator) act(x Expr, f form) form {
 			return e.actPower(n, f)
 		}
 	}
-	panic(newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("the operator '%s' is not yet supported", shorten(String(x))), "sums, products and powers of box can be used"))
+	panic(newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("the operator '%s' is not yet supported", brief(x)), "sums, products and powers of box can be used"))
 }
 
 func (e *elaborator) actPower(n *Power, f form) form {

@@ -108,7 +108,7 @@ func (m *Model) Point(src *diag.Source) (list []Assignment, err error) {
 		e.try(func() {
 			g, ok := e.symbolGen(p.Name)
 			if !ok {
-				panic(newFault(diag.NotASymbol, p.Name.Span(), fmt.Sprintf("'%s' cannot be given a value", String(p.Name)), "values are given to constants, k and functions of time with their derivatives"))
+				panic(newFault(diag.NotASymbol, p.Name.Span(), fmt.Sprintf("'%s' cannot be given a value", brief(p.Name)), "values are given to constants, k and functions of time with their derivatives"))
 			}
 			list = append(list, Assignment{g, String(p.Name), e.numeric(p.Value), p.At})
 		})

@@ -98,7 +98,7 @@ func (e *elaborator) leaderOnce(g field.Gen, left Expr) {
 		e.leaders[g] = left.Span()
 		return
 	}
-	f := newFault(diag.GivenTwice, left.Span(), fmt.Sprintf("'%s' is given twice", String(left)), "one relation for a quantity is allowed")
+	f := newFault(diag.GivenTwice, left.Span(), fmt.Sprintf("'%s' is given twice", brief(left)), "one relation for a quantity is allowed")
 	f.Related = []diag.Related{{Span: old, Label: "the first one"}}
 	panic(f)
 }
@@ -127,7 +127,7 @@ func (e *elaborator) relationFault(err error, at diag.Span) *fault {
 	var unsolvable *field.Unsolvable
 	switch {
 	case errors.As(err, &contradiction):
-		follows := e.k.Int(0).Add(contradiction.Follows).String() + " = 0"
+		follows := shorten(contradiction.Follows.String()) + " = 0"
 		why := "which cannot be"
 		if contradiction.Assumed {
 			why = "which was assumed not to vanish"

@@ -37,31 +37,32 @@ func (e *elaborator) rest(s *Statement) {
 
 func (e *elaborator) keep(s *Statement) {
 	w := &s.Keep.Word
-	sym := e.symbols[w.Name()]
-	if s.Keep.Definition == nil {
-		name := &Name{node{w.Span()}, w.Text, w.Name()}
-		if sym = e.lookup(name); sym.kind != symbolField {
-			panic(newFault(diag.NotAField, w.Span(), fmt.Sprintf("'%s' is %s and cannot be kept", w.Text, kindNames[sym.kind]), "a perturbation declared in 'fields' is kept, or a new one: keep u = expression"))
+	if s.Keep.Definition != nil {
+		if e.declare(w, symbolField, len(e.src.Text)+1) != nil {
+			e.model.Keep = &Keep{Name: w.Name(), Span: w.Span(), Field: -1, Definition: e.linear(s.Keep.Definition.X)}
 		}
-		e.model.Keep = &Keep{Name: sym.name, Span: sym.at, Field: sym.index}
-		e.model.Keep.Span = w.Span()
 		return
 	}
-	if e.declare(w, symbolField, len(e.src.Text)+1) == nil {
-		return
+	sym := e.lookup(&Name{node{w.Span()}, w.Text, w.Name()})
+	if sym.kind != symbolField {
+		panic(newFault(diag.NotAField, w.Span(), fmt.Sprintf("'%s' is %s and cannot be kept", w.Text, kindNames[sym.kind]), "a perturbation declared in 'fields' is kept, or a new one: keep u = expression"))
 	}
-	f := e.value(s.Keep.Definition.X)
-	keep := &Keep{Name: w.Name(), Span: w.Span(), Field: -1}
-	for _, t := range f.terms {
+	e.model.Keep = &Keep{Name: sym.name, Span: w.Span(), Field: sym.index}
+}
+
+// linear evaluates the definition of a new variable.
+func (e *elaborator) linear(x Expr) []LinearTerm {
+	var list []LinearTerm
+	for _, t := range e.value(x).terms {
 		if t.degree != 1 {
-			panic(newFault(diag.WrongOrder, t.at, fmt.Sprintf("'%s' is of order %d in the perturbations", e.src.Slice(t.at), t.degree), "a new variable is of order 1"))
+			panic(newFault(diag.WrongOrder, t.at, fmt.Sprintf("'%s' is of order %d in the perturbations", e.quote(t.at), t.degree), "a new variable is of order 1"))
 		}
-		keep.Definition = append(keep.Definition, LinearTerm{t.coef, t.u, t.at})
+		list = append(list, LinearTerm{t.coef, t.u, t.at})
 	}
-	if len(f.terms) == 0 {
-		panic(newFault(diag.WrongOrder, s.Keep.Definition.X.Span(), "the new variable is zero", "a new variable is of order 1 in the perturbations"))
+	if len(list) == 0 {
+		panic(newFault(diag.WrongOrder, x.Span(), "the new variable is zero", "a new variable is of order 1 in the perturbations"))
 	}
-	e.model.Keep = keep
+	return list
 }
 
 // maxSeriesOrder bounds the order that a file may ask series to be carried to.
@@ -99,18 +100,18 @@ func (e *elaborator) number(eq *Equation) {
 	}
 	g, ok := e.symbolGen(left)
 	if !ok {
-		panic(newFault(diag.NotASymbol, left.Span(), fmt.Sprintf("'%s' has no value of its own", String(left)), "the forms are: M = 1 for a constant, phi(0) = 27/5 for an initial value"))
+		panic(newFault(diag.NotASymbol, left.Span(), fmt.Sprintf("'%s' has no value of its own", brief(left)), "the forms are: M = 1 for a constant, phi(0) = 27/5 for an initial value"))
 	}
 	if isConstant := e.k.Info(g).Kind == field.Constant; isConstant == initial {
-		hint := fmt.Sprintf("an initial value is written %s(0)", String(left))
+		hint := fmt.Sprintf("an initial value is written %s(0)", brief(left))
 		if isConstant {
-			hint = "a constant has its value at all times: " + String(left) + " = …"
+			hint = "a constant has its value at all times: " + brief(left) + " = …"
 		}
-		panic(newFault(diag.NotASymbol, eq.Left.X.Span(), fmt.Sprintf("'%s' cannot be given like this", String(eq.Left.X)), hint))
+		panic(newFault(diag.NotASymbol, eq.Left.X.Span(), fmt.Sprintf("'%s' cannot be given like this", brief(eq.Left.X)), hint))
 	}
 	for _, old := range e.model.Numbers {
 		if old.Gen == g {
-			f := newFault(diag.DeclaredTwice, eq.Left.X.Span(), fmt.Sprintf("'%s' has two values", String(eq.Left.X)), "one value is allowed")
+			f := newFault(diag.DeclaredTwice, eq.Left.X.Span(), fmt.Sprintf("'%s' has two values", brief(eq.Left.X)), "one value is allowed")
 			f.Related = []diag.Related{{Span: old.Span, Label: "the first one"}}
 			panic(f)
 		}
@@ -123,7 +124,7 @@ func (e *elaborator) numeric(x Expr) field.Elem {
 	v := e.background(x, "a value")
 	for _, g := range v.Gens() {
 		if !e.isNumber(g) {
-			panic(newFault(diag.NotANumber, x.Span(), fmt.Sprintf("'%s' is no number", String(x)), "a value is made of numbers, pi and roots"))
+			panic(newFault(diag.NotANumber, x.Span(), fmt.Sprintf("'%s' is no number", brief(x)), "a value is made of numbers, pi and roots"))
 		}
 	}
 	return v
