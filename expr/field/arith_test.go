@@ -88,25 +88,29 @@ func TestValuesModuloPrime(t *testing.T) {
 // A factor below is split by what is above while the fraction is inverted, or its sign is
 // found: u = m² − H² is known as one factor when (m + H)/u comes.
 func TestFactorsSplitOnTheWay(t *testing.T) {
-	for _, use := range []func(t *testing.T, e, want Elem){
-		func(t *testing.T, e, want Elem) { same(t, "inverse", e.Inv(), want.Inv()) },
-		func(t *testing.T, e, want Elem) { same(t, "square root", mustSqrt(t, e).Pow(2), want) },
-		func(t *testing.T, e, want Elem) { same(t, "derivative", e.D(), want.D()) },
-		func(t *testing.T, e, want Elem) { same(t, "lowest terms", e.Lowest(), want) },
-		func(t *testing.T, e, want Elem) {
-			if e.Sign() != Unknown || e.Neg().Sign() != Unknown {
-				t.Errorf("%v has sign %d", e, e.Sign())
+	for _, c := range []struct {
+		law string
+		of  func(Elem) Elem
+	}{
+		{"inverse", Elem.Inv},
+		{"square of the root", func(e Elem) Elem { return mustSqrt(t, e).Pow(2) }},
+		{"derivative", Elem.D},
+		{"lowest terms", Elem.Lowest},
+		{"lowest terms after the sign was asked for", func(e Elem) Elem {
+			if s := e.Neg().Sign(); s != Unknown {
+				t.Errorf("%v has sign %d", e.Neg(), s)
 			}
-		},
+			return e.Lowest()
+		}},
 	} {
 		w := newWorld()
 		m, h := w.f.Gen(w.m), w.f.Gen(w.h)
-		u := m.Pow(2).Sub(h.Pow(2)).Inv()
-		e := u.Mul(m.Add(h)) // not cancelled: m + H is no factor yet
+		e := m.Add(h).Mul(m.Pow(2).Sub(h.Pow(2)).Inv()) // m + H is no factor yet
 		if e.Num().IsOne() {
 			t.Fatal("the fraction was cancelled too early to test anything")
 		}
-		use(t, e, m.Sub(h).Inv())
+		got := c.of(e)
+		same(t, c.law, got, c.of(m.Sub(h).Inv())) // this inverse splits the factor
 		coprime(t, w.f)
 	}
 }

@@ -216,3 +216,25 @@ func TestHubbleFlow(t *testing.T) {
 	same(t, "H'' = εH³(2ε − η)", f.Jet(w.h, 2), e.Mul(h.Pow(3)).Mul(e.Scale(2, 1).Sub(n)))
 	same(t, "ε'' = εH²(η² − εη) + εHη'", f.Jet(eps, 2), e.Mul(h.Pow(2)).Mul(n.Pow(2).Sub(e.Mul(n))).Add(e.Mul(h).Mul(f.Jet(eta, 1))))
 }
+
+// A relation for a function of two arguments gives its derivative by the first; the others
+// stay free.
+func TestRelationForFunctionOfTwoArguments(t *testing.T) {
+	w := newWorld()
+	f := w.f
+	h, m, phi1, phi2 := f.Gen(w.h), f.Gen(w.m), f.Jet(w.phi, 1), f.Jet(w.phi, 2)
+	value := m.Pow(2).Mul(h.Pow(2)).Scale(3, 1)
+	relate(t, f.RelateGen(f.FuncJetGen(w.P, []int{0, 0}), value, 1))
+	pX := f.FuncJet(w.P, []int{0, 1})
+	same(t, "P,φ φ' + P,X φ'φ'' = D P", f.FuncJet(w.P, []int{1, 0}).Mul(phi1).Add(pX.Mul(phi1).Mul(phi2)), value.D())
+	same(t, "P,X is free", pX, f.Raw(f.FuncJetGen(w.P, []int{0, 1})))
+	b := f.RandomBackground(poly.Mersenne61, 3)
+	x, err := b.Taylor(f.Raw(f.FuncJetGen(w.P, []int{1, 0})), 3)
+	if err != nil {
+		t.Fatal(err)
+	}
+	y, err := b.Taylor(f.FuncJet(w.P, []int{1, 0}), 3)
+	if err != nil || !slices.Equal(x, y) {
+		t.Errorf("P,φ has the Taylor series %v, its value %v: %v", x, y, err)
+	}
+}
