@@ -24,6 +24,7 @@ var update = flag.Bool("update", false, "write the golden files anew")
 //
 //	elem EXPR
 //	linear                   then lines NAME ORDER: EXPR
+//	solution NAME            then the same
 //	action CLOCK NAME        then q₀, q₁, … one a line
 //	matrix CLOCK NAME NAME   then lines symmetric|antisymmetric N A B: EXPR
 func TestGolden(t *testing.T) {
@@ -134,7 +135,13 @@ func (w *world) input(text string) (n show.Node, value *field.Elem, err error) {
 		e, err := w.read(rest)
 		return show.Elem(e), &e, err
 	case "linear":
-		n, err = w.linear(lines)
+		var terms []show.LinearTerm
+		terms, err = w.linear(lines)
+		n = show.Linear(terms)
+	case "solution":
+		var terms []show.LinearTerm
+		terms, err = w.linear(lines)
+		n = show.Solution(names[0], terms)
 	case "action":
 		var q []field.Elem
 		for _, l := range lines {
@@ -155,7 +162,7 @@ func (w *world) input(text string) (n show.Node, value *field.Elem, err error) {
 	return n, nil, err
 }
 
-func (w *world) linear(lines []string) (show.Node, error) {
+func (w *world) linear(lines []string) ([]show.LinearTerm, error) {
 	var terms []show.LinearTerm
 	for _, l := range lines {
 		head, expr, _ := strings.Cut(l, ":")
@@ -169,7 +176,7 @@ func (w *world) linear(lines []string) (show.Node, error) {
 		}
 		terms = append(terms, term)
 	}
-	return show.Linear(terms), nil
+	return terms, nil
 }
 
 func (w *world) matrix(size int, lines []string) (oper.MatrixNormalForm, error) {

@@ -68,7 +68,7 @@ type Identifiers struct {
 }
 
 // GoIdentifiers gives the generators exported names: GoName where no two meet. Of names that
-// differ in their case only, the small one is put behind Small; of other names that meet,
+// differ in their case only, the small one gets Small before it; of other names that meet,
 // the later ones are numbered.
 func GoIdentifiers(f *field.Field, gens []field.Gen) *Identifiers {
 	ids := &Identifiers{map[field.Gen]string{}, map[string]string{}}

@@ -85,7 +85,7 @@ func PackageName(title string) string {
 		}
 	}
 	name := b.String()
-	if name == "" || name == "main" || name == "test" || token.IsKeyword(name) || len(name) > 40 {
+	if name == "" || name == "main" || name == "init" || name == "test" || token.IsKeyword(name) || len(name) > 40 {
 		return "model"
 	}
 	return name
