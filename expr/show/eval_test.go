@@ -13,17 +13,12 @@ import (
 )
 
 // world is a field declared by a few statements.
-type world struct {
-	f *field.Field
-	// functions holds what each function of each argument was read as the first time; the
-	// sign of a root is a choice that is made once.
-	functions map[string]field.Elem
-}
+type world struct{ f *field.Field }
 
 // newWorld reads statements: constants, background, functions, given; k and H are declared
 // already.
 func newWorld(statements string) (*world, error) {
-	w := &world{field.New(nil), map[string]field.Elem{}}
+	w := &world{field.New(nil)}
 	w.f.Wavenumber("k")
 	for n, line := range strings.Split(strings.TrimSpace(statements), "\n") {
 		kind, rest, _ := strings.Cut(line, " ")
@@ -241,14 +236,9 @@ func (r *reader) atom() field.Elem {
 	if r.take('(') {
 		arg := r.sum()
 		r.need(')')
-		key := name + "(" + arg.String() + ")"
-		e, known := r.w.functions[key]
-		if !known {
-			var err error
-			if e, err = f.Elementary(name, arg); err != nil {
-				panic(err)
-			}
-			r.w.functions[key] = e
+		e, err := f.Elementary(name, arg)
+		if err != nil {
+			panic(err)
 		}
 		return e
 	}
