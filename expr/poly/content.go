@@ -61,14 +61,9 @@ func (p Poly) MonoContent() []Power {
 		return nil
 	}
 	var m []Power
-	for i, v := range p.d.lay.vars {
-		f := p.d.lay.field[i]
-		least := ^uint64(0)
-		for k := int(f.word); k < len(p.d.exps) && least > 0; k += p.d.lay.words {
-			least = min(least, p.d.exps[k]>>f.shift&f.mask)
-		}
-		if least > 0 {
-			m = append(m, Power{v, uint32(least)})
+	for i, e := range p.d.lay.valuations(p.d.exps) {
+		if e > 0 {
+			m = append(m, Power{p.d.lay.vars[i], uint32(e)})
 		}
 	}
 	return m

@@ -41,6 +41,7 @@ type layout struct {
 	guard []uint64 // the guard bits of each word
 	over  []uint64 // the bits of each word that a sum of two exponents must leave zero
 	words int      // at least 1
+	width uint     // of all fields, 0 if they differ
 }
 
 // constLayout is the layout of constants: one word, always zero.
@@ -65,7 +66,7 @@ func newLayout(vars []Var, need int) *layout {
 	words := wordsNeeded(n, need)
 	per := (n + words - 1) / words
 	width := 64 / per
-	l := &layout{vars: vars, field: make([]field, n), guard: make([]uint64, words), over: make([]uint64, words), words: words}
+	l := &layout{vars: vars, field: make([]field, n), guard: make([]uint64, words), over: make([]uint64, words), words: words, width: uint(width)}
 	for i := range n {
 		l.place(i, i/per, 64-width*(i%per+1), width)
 	}
@@ -158,17 +159,43 @@ func (l *layout) need(or []uint64) int {
 }
 
 // degrees is the greatest exponent of each variable.
-func (l *layout) degrees(exps []uint64) []uint64 {
-	d := make([]uint64, len(l.vars))
-	for i := range d {
-		f := l.field[i]
-		m := uint64(0)
-		for k := int(f.word); k < len(exps); k += l.words {
-			m = max(m, exps[k]>>f.shift&f.mask)
+func (l *layout) degrees(exps []uint64) []uint64 { return l.extremes(exps, 0) }
+
+// valuations is the least exponent of each variable.
+func (l *layout) valuations(exps []uint64) []uint64 { return l.extremes(exps, ^uint64(0)) }
+
+// extremes is the greatest exponents for invert = 0, the least ones for its complement.
+func (l *layout) extremes(exps []uint64, invert uint64) []uint64 {
+	out := make([]uint64, len(l.vars))
+	if l.width == 0 {
+		for i := range out {
+			f := l.field[i]
+			for k := int(f.word); k < len(exps); k += l.words {
+				if x := exps[k] >> f.shift & f.mask; k == int(f.word) || x^invert > out[i]^invert {
+					out[i] = x
+				}
+			}
 		}
-		d[i] = m
+		return out
 	}
-	return d
+	// All fields of a word at once: with the guard bits set in a, the guard of a − b
+	// remains where a ≥ b; from the guard the mask of the field's other bits is made.
+	var buf [4]uint64
+	best := append(buf[:0], exps[:l.words]...)
+	for j := range best {
+		a, g := best[j], l.guard[j]
+		for k := j + l.words; k < len(exps); k += l.words {
+			b := exps[k]
+			ge := ((a | g) - b) & g
+			m := (ge - ge>>(l.width-1)) ^ invert
+			a = a&m | b&^m
+		}
+		best[j] = a
+	}
+	for i := range out {
+		out[i] = l.exp(best, i)
+	}
+	return out
 }
 
 // pack writes one exponent for each variable as a monomial.
@@ -276,7 +303,7 @@ func (l *layout) shrink(or []uint64) *layout {
 		}
 	}
 	if n == len(l.vars) {
-		if n == 0 || l.regular() && (l.words == 1 || wordsNeeded(n, l.need(or)) == l.words) {
+		if n == 0 || l.width > 0 && (l.words == 1 || wordsNeeded(n, l.need(or)) == l.words) {
 			return l
 		}
 		return newLayout(l.vars, l.need(or))
@@ -288,19 +315,4 @@ func (l *layout) shrink(or []uint64) *layout {
 		}
 	}
 	return newLayout(vars, l.need(or))
-}
-
-// regular reports whether l is one of newLayout's.
-func (l *layout) regular() bool {
-	if len(l.vars) == 0 {
-		return true
-	}
-	per := (len(l.vars) + l.words - 1) / l.words
-	width := 64 / per
-	for i, f := range l.field {
-		if f.mask != ^uint64(0)>>(64-width) || int(f.shift) != 64-width*(i%per+1) {
-			return false
-		}
-	}
-	return true
 }

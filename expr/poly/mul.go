@@ -32,7 +32,7 @@ func (o Ops) Mul(p, q Poly) Poly {
 	} else {
 		o.mulTerms(&b, a, c)
 	}
-	if l.words > 1 || !l.regular() {
+	if l.words > 1 || l.width == 0 {
 		return b.canonical()
 	}
 	return b.poly()

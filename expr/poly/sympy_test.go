@@ -114,7 +114,7 @@ func TestAgainstSymPy(t *testing.T) {
 	if err := exec.Command(python, "-c", "import sympy").Run(); err != nil {
 		absent("python3 has no module sympy: %v", err)
 	}
-	qs, args := drawQuestions(80)
+	qs, args := drawQuestions(60)
 	in, err := json.Marshal(qs)
 	if err != nil {
 		t.Fatal(err)
