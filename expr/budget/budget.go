@@ -34,7 +34,7 @@ type Stop struct {
 func (s *Stop) Error() string {
 	stage := s.Stage
 	if stage == "" {
-		stage = "start"
+		stage = "starting"
 	}
 	if s.Reason == Terms {
 		return fmt.Sprintf("a result has more than %d terms; stopped while %s", s.Limit, stage)
