@@ -68,7 +68,7 @@ func (r *Result) At(src *diag.Source) (v *Values, err error) {
 		return nil, p.fault
 	}
 	if len(p.missing) > 0 {
-		return nil, diag.List{{Kind: PointMissing, Summary: "the point gives no value for " + strings.Join(p.missing, ", ")}}
+		return nil, diag.List{{Kind: PointMissing, Summary: src.Name + ": the point gives no value for " + strings.Join(p.missing, ", ")}}
 	}
 	return v, nil
 }

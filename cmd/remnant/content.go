@@ -111,8 +111,12 @@ func (f *findings) solved() *section {
 func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int) row {
 	left, sum := withoutInverseLaplacian(m, sol)
 	r := row{number: number, label: maths(left), value: compare(nil, equals, reduce.SumNode(sum))}
-	r.note = words("redefines it, to expose a hidden constraint")
-	if st.Kind != reduce.Redefined {
+	switch {
+	case st.Kind == reduce.Redefined:
+		r.note = words("redefines it, to expose a hidden constraint")
+	case sol.Equation == "":
+		r.note = join("", words("exchanges it for "), maths(show.Symbol(st.After.Names[0], 0)))
+	default:
 		r.note = join("", words("from the "), maths(show.Symbol(sol.Equation, 0)), words(" equation"))
 	}
 	var needs []phrase

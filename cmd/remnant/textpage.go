@@ -37,7 +37,7 @@ func textPage(p *page, st textStyle) []byte {
 		w.heading(w.phrase(s.heading))
 		w.blocks(s.blocks)
 	}
-	return []byte(w.b.String())
+	return []byte(strings.ReplaceAll(w.b.String(), hard, " "))
 }
 
 type textWriter struct {
@@ -159,7 +159,8 @@ func (w *textWriter) broken(p phrase, room int) string {
 	return strings.Join(lines, "\n")
 }
 
-// hard stands for a blank of mathematics, at which words are not wrapped.
+// hard stands for a blank of mathematics, at which words are not wrapped; the page ends with
+// plain ones.
 const hard = "\u00a0"
 
 // phrase is a phrase on one line, the blanks of its mathematics hard.
@@ -224,7 +225,7 @@ func (w *textWriter) words(s string) string {
 	return s
 }
 
-// wrapWords breaks text at blanks and makes its hard blanks plain.
+// wrapWords breaks text at blanks that are not hard.
 func wrapWords(text string, width int) []string {
 	var lines []string
 	line := ""
@@ -239,11 +240,7 @@ func wrapWords(text string, width int) []string {
 			line = word
 		}
 	}
-	lines = append(lines, line)
-	for i := range lines {
-		lines[i] = strings.ReplaceAll(lines[i], hard, " ")
-	}
-	return lines
+	return append(lines, line)
 }
 
 // columns counts the columns of a text; marks that stand on a letter take none.
