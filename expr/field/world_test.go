@@ -15,13 +15,22 @@ import (
 // check runs a property on random elements and gives up those that grow too large to be
 // worth their time.
 func check(t *testing.T, property func(*rapid.T)) {
+	t.Helper()
+	tried, stopped := 0, 0
 	rapid.Check(t, func(t *rapid.T) {
-		var stopped error
+		var err error
 		func() {
-			defer budget.Catch(&stopped)
+			defer budget.Catch(&err)
 			property(t)
 		}()
+		tried++
+		if err != nil {
+			stopped++
+		}
 	})
+	if 4*stopped > tried {
+		t.Errorf("%d of %d cases were given up as too large", stopped, tried)
+	}
 }
 
 // world is a field to test with: constants m > 0 and q, k, functions a > 0, H, φ with jets,
