@@ -12,8 +12,11 @@ import "math/big"
 // divHeap divides word coefficients on one-word monomials.
 func (o Ops) divHeap(b *builder, p, q operand, bound uint64) quotient {
 	pe, qe, guard := p.exps, q.exps, b.lay.guard[0]
-	var h rowHeap
-	var at, ready []int32 // at[i] is the divisor term that row i meets next
+	var heapBuf [stackRows]entry
+	var rowBuf [3][stackRows]int32
+	h := rowHeap{heap: heapBuf[:0], next: rowBuf[0][:0]}
+	at, ready := rowBuf[1][:0], rowBuf[2][:0] // at[i] is the divisor term that row i meets next
+	b.reserve(1 + len(pe)/len(qe))
 	for k := 0; k < len(pe) || len(h.heap) > 0; {
 		var a acc // the remainder with the opposite sign
 		var key uint64

@@ -266,7 +266,7 @@ func (z *zippel) poly(order []Var, gamma Poly, s form, co []*big.Int) Poly {
 			continue
 		}
 		m := power(order[0], uint64(s.x[t]))
-		for i, e := range s.exp[t] {
+		for i, e := range s.ys(t) {
 			if e > 0 {
 				m = append(m, Power{order[i+1], e})
 			}

@@ -28,12 +28,16 @@ type zippel struct {
 }
 
 // form is h without its leading coefficient, modulo a prime: terms sorted by the power
-// of x, with the exponents of y_1 … y_i.
+// of x.
 type form struct {
 	x   []uint32
-	exp [][]uint32
+	n   int      // number of y
+	exp []uint32 // the exponents of y_1 … y_n, for each term
 	co  []uint64
 }
+
+// ys is the exponents of y in term t.
+func (s *form) ys(t int) []uint32 { return s.exp[t*s.n : (t+1)*s.n] }
 
 // outcome of a modular computation.
 type outcome uint8
@@ -103,7 +107,7 @@ func (z *zippel) first(f primeField) (form, outcome) {
 	var s form
 	for x, c := range h[:z.deg] {
 		if c != 0 {
-			s.x, s.exp, s.co = append(s.x, uint32(x)), append(s.exp, nil), append(s.co, c)
+			s.x, s.co = append(s.x, uint32(x)), append(s.co, c)
 		}
 	}
 	for i := 1; i <= z.k; i++ {
@@ -142,7 +146,7 @@ func (z *zippel) extend(e *prepared, s form, i int, base uint64) (form, outcome)
 		points, value = append(points, y), append(value, co)
 	}
 	m := f.lagrange(points)
-	var t form
+	t := form{n: i}
 	for k := range s.co {
 		for d := range n {
 			c := uint64(0)
@@ -150,8 +154,8 @@ func (z *zippel) extend(e *prepared, s form, i int, base uint64) (form, outcome)
 				c = f.add(c, f.mul(m[j][d], value[j][k]))
 			}
 			if c != 0 {
-				exp := append(append(make([]uint32, 0, i), s.exp[k]...), uint32(d))
-				t.x, t.exp, t.co = append(t.x, s.x[k]), append(t.exp, exp), append(t.co, c)
+				t.x, t.co = append(t.x, s.x[k]), append(t.co, c)
+				t.exp = append(append(t.exp, s.ys(k)...), uint32(d))
 			}
 		}
 	}
@@ -196,7 +200,7 @@ func (z *zippel) newSampler(e *prepared, s form, i int) (w *sampler, ok bool) {
 	node := make([]uint64, len(s.co))
 	for t := range node {
 		node[t] = e.f.one
-		for k, x := range s.exp[t] {
+		for k, x := range s.ys(t) {
 			node[t] = e.f.mul(node[t], e.f.pow(beta[k+1], uint64(x)))
 		}
 	}
