@@ -234,7 +234,9 @@ func (w *line) quotient(q quotient) {
 	}
 	w.write(q.num, min)
 	w.put("/")
+	w.depth++ // what stands below the line is better kept together
 	w.write(q.den, precFactor)
+	w.depth--
 }
 
 // expander is a dialect without exponents.

@@ -39,23 +39,22 @@ func (wr Writer) ASCII(n Node) string {
 // indent is put before every line but the first.
 const indent = "    "
 
-// wrapped breaks the line at the shallowest breaks that keep within the width; of breaks
-// of one depth the last that fits.
+// wrapped breaks the line where that is shallowest and keeps within the width.
 func (w *line) wrapped(width int) string {
 	if width <= 0 {
 		return w.flat()
 	}
 	var b strings.Builder
 	rest := w.pieces
-	room := width
+	room, next := width, max(width-len(indent), 1)
 	for first := true; len(rest) > 0; first = false {
 		text := rest[0].text
 		if !first {
 			b.WriteString("\n" + indent)
 			text = strings.TrimPrefix(text, " ")
-			room = max(width-len(indent), 1)
+			room = next
 		}
-		n := fitting(rest, text, room)
+		n := fitting(rest, text, room, next)
 		b.WriteString(text)
 		for _, p := range rest[1:n] {
 			b.WriteString(p.text)
@@ -66,18 +65,52 @@ func (w *line) wrapped(width int) string {
 }
 
 // fitting is how many pieces go on the line: all, or those before the best break. first is
-// the text of the first piece, which always goes.
-func fitting(ps []piece, first string, room int) int {
-	used, best := textWidth(first), 1
-	for i := 1; i < len(ps); i++ {
-		if i == 1 || ps[i].depth <= ps[best].depth {
-			best = i
+// the text of the first piece, which always goes; next is the room on the line that follows.
+// The best break is the last of the shallowest; but where that leaves the line nearly empty,
+// and what follows must be broken further inside in any case, a deeper one.
+func fitting(ps []piece, first string, room, next int) int {
+	used := textWidth(first)
+	var at []int // width of the line that ends before piece i
+	for _, p := range ps[1:] {
+		at = append(at, used)
+		if used += textWidth(p.text); used > room {
+			break
 		}
-		if used += textWidth(ps[i].text); used > room {
+	}
+	if used <= room {
+		return len(ps)
+	}
+	best, depth := 1, -1
+	for {
+		i, d := shallowest(ps, len(at), depth)
+		if i == 0 {
+			return best
+		}
+		best, depth = i, d
+		if at[i-1] >= room/4 || unbroken(ps, i, d) <= next {
 			return best
 		}
 	}
-	return len(ps)
+}
+
+// shallowest finds the last of the shallowest breaks before pieces 1 to n that are deeper
+// than depth; 0 if there is none.
+func shallowest(ps []piece, n, depth int) (i, d int) {
+	for j := 1; j <= n; j++ {
+		if ps[j].depth > depth && (i == 0 || ps[j].depth <= d) {
+			i, d = j, ps[j].depth
+		}
+	}
+	return i, d
+}
+
+// unbroken is the width from piece i to the next break of depth d or less.
+func unbroken(ps []piece, i, d int) int {
+	n := textWidth(ps[i].text)
+	for j := i + 1; j < len(ps) && ps[j].depth > d; j++ {
+		n += textWidth(ps[j].text)
+	}
+	return n
 }
 
 // textWidth counts the columns of s; marks that stand on a letter take none.
