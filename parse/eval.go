@@ -364,7 +364,7 @@ func (e *elaborator) evalDeriv(n *Deriv) form {
 			panic(e.notAnIndex(n))
 		}
 	}
-	if _, high := f.degrees(); high == 0 {
+	if _, high := f.degrees(); high == 0 && len(f.terms) > 0 {
 		panic(newFault(diag.SpaceOfBackground, n.Label.At, fmt.Sprintf("'%s' depends on time alone and cannot be differentiated by '%s'", brief(n.X), n.Label.Text), "perturbations have space derivatives"))
 	}
 	for range n.Label.Text {
