@@ -7,6 +7,9 @@ import (
 	"remnant/expr/oper"
 )
 
+// Frame2 is (a/N̄)², which takes a ratio of coefficients to the conformal clock.
+func (r *Result) Frame2() field.Elem { return r.Model.A.Div(r.Model.Lapse).Pow(2) }
+
 // Frequency2 is −(a²/N̄²)q₀/q₁, which is c_s²k² + a²ℳ/(N̄²𝒦) where 𝒢 and ℳ exist: with the primes
 // d/dη the canonical variable v obeys v″ + (Frequency2 − z″/z) v = 0. It is false unless one
 // field of second order remains.
@@ -15,7 +18,7 @@ func (r *Result) Frequency2() (field.Elem, bool) {
 		return field.Elem{}, false
 	}
 	q := r.Single.Q
-	return q[0].Neg().Div(q[1]).Mul(r.Model.A.Div(r.Model.Lapse).Pow(2)).Lowest(), true
+	return q[0].Neg().Div(q[1]).Mul(r.Frame2()).Lowest(), true
 }
 
 // DefinitionSum is the expression by which the model defines the new variable that it keeps;

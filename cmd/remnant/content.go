@@ -109,8 +109,8 @@ func (f *findings) solved() *section {
 }
 
 func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int) row {
-	left, sum := withoutInverseLaplacian(m, sol)
-	r := row{number: number, label: maths(left), value: compare(nil, equals, reduce.SumNode(sum))}
+	n, sum := sol.TimesLaplacian(m.Wavenumber)
+	r := row{number: number, label: maths(show.Spatial(sol.Name, 0, n)), value: compare(nil, equals, reduce.SumNode(sum))}
 	switch {
 	case st.Kind == reduce.Redefined:
 		r.note = words("redefines it, to expose a hidden constraint")
@@ -127,35 +127,6 @@ func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int
 		r.note = join(", needs ", r.note, list(needs))
 	}
 	return r
-}
-
-// withoutInverseLaplacian moves powers of 1/k² in a solution to the left: ∂²ψ = … .
-func withoutInverseLaplacian(m *parse.Model, sol reduce.Solution) (show.Node, []reduce.Addend) {
-	plain := show.Symbol(sol.Name, 0)
-	k := m.Wavenumber.Num().Vars()[0]
-	power := 0
-	for _, a := range sol.Sum {
-		for i := 0; i <= a.Coef.Order(); i++ {
-			if c := a.Coef.Coef(i).Lowest(); !c.IsZero() {
-				power = max(power, c.Den().MinDegree(k))
-			}
-		}
-	}
-	if power == 0 || power%2 != 0 {
-		return plain, sol.Sum
-	}
-	laplacian := m.Wavenumber.Pow(2).Neg().Pow(power / 2)
-	var out []reduce.Addend
-	for _, a := range sol.Sum {
-		moved := a.Coef.Map(func(c field.Elem) field.Elem { return c.Mul(laplacian).Lowest() })
-		for i := 0; i <= moved.Order(); i++ {
-			if _, ok := show.Laplacians(moved.Coef(i)); !ok {
-				return plain, sol.Sum
-			}
-		}
-		out = append(out, reduce.Addend{Coef: moved, Name: a.Name})
-	}
-	return show.Spatial(sol.Name, 0, power), out
 }
 
 // actionBlock is the action of a system.
@@ -380,11 +351,6 @@ func (f *findings) vanishing(factor field.Elem) phrase {
 	return compare(show.Elem(factor), equals, show.Int(0))
 }
 
-// frame is (a/N̄)², which takes a ratio of coefficients to the conformal clock.
-func (f *findings) frame() show.Node {
-	return show.Elem(f.Model.A.Div(f.Model.Lapse).Pow(2))
-}
-
 // shortSpeed gives a long sound speed by the coefficients above it.
 func (f *findings) shortSpeed(rows []row) []row {
 	s := f.Single
@@ -392,7 +358,7 @@ func (f *findings) shortSpeed(rows []row) []row {
 		return rows
 	}
 	last := &rows[len(rows)-1]
-	last.value = join("", maths(f.frame()), words(" gradient/kinetic"))
+	last.value = join("", maths(show.Elem(f.Frame2())), words(" gradient/kinetic"))
 	return rows
 }
 
