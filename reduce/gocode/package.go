@@ -46,7 +46,7 @@ type generator struct {
 
 // Generate writes the package for a result. It fails where nothing propagates, and with a
 // *budget.Stop where a limit was reached.
-func Generate(r *reduce.Result) (p *Package, err error) {
+func Generate(r *reduce.Result) (_ *Package, err error) {
 	defer budget.Catch(&err)
 	r.Model.K.Budget().Stage("writing Go code")
 	q, err := contentsOf(r)
@@ -56,7 +56,7 @@ func Generate(r *reduce.Result) (p *Package, err error) {
 	g := &generator{r: r, name: PackageName(r.Model.Title), quantities: q, ids: map[field.Gen]string{},
 		show: show.Writer{Width: 84, Conformal: r.Model.Clock == parse.Conformal}}
 	g.collect()
-	p = &Package{Name: g.name}
+	p := &Package{Name: g.name}
 	for _, f := range []struct{ name, text string }{
 		{"doc.go", g.doc()},
 		{"go.mod", "module generated/" + g.name + "\n\ngo 1.21\n"},
@@ -228,7 +228,8 @@ func (g *generator) doc() string {
 		}
 		b.WriteString("//\n")
 	}
-	para("No function allocates. Where a denominator vanishes the result is an infinity or NaN.")
+	para("No function allocates. Where a denominator vanishes the result is an infinity or NaN. The " +
+		"package is a module of its own; without its go.mod it belongs to the module around it.")
 	return strings.TrimSuffix(b.String(), "//\n") + "package " + g.name + "\n"
 }
 

@@ -2,6 +2,8 @@ package gocode
 
 import (
 	"bytes"
+	"context"
+	"errors"
 	"go/format"
 	"os"
 	"os/exec"
@@ -10,6 +12,7 @@ import (
 	"strings"
 	"testing"
 
+	"remnant/expr/budget"
 	"remnant/parse"
 	"remnant/parse/diag"
 	"remnant/reduce"
@@ -149,6 +152,31 @@ func TestNothingToWrite(t *testing.T) {
 	}
 	if _, err := Generate(r); err == nil || !strings.Contains(err.Error(), "nothing propagates") {
 		t.Errorf("err = %v", err)
+	}
+}
+
+// TestGenerateIsBounded: an interrupted run ends with an error and no package.
+func TestGenerateIsBounded(t *testing.T) {
+	text, err := os.ReadFile("../../testdata/curlew.act")
+	if err != nil {
+		t.Fatal(err)
+	}
+	m, err := parse.Load(diag.NewSource("curlew.act", string(text)), nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	r, err := reduce.Reduce(m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	m.K.SetBudget(budget.New(ctx, 0))
+	var stop *budget.Stop
+	if p, err := Generate(r); !errors.As(err, &stop) || p != nil {
+		t.Errorf("package %v, error %v", p, err)
+	} else if stop.Stage != "writing Go code" {
+		t.Errorf("stopped while %s", stop.Stage)
 	}
 }
 
