@@ -148,16 +148,16 @@ func (e *elaborator) lapse() {
 func (e *elaborator) arguments(f *Function) ([]string, []field.Elem) {
 	var names []string
 	var args []field.Elem
+	named := map[string]bool{}
 	for _, a := range f.Arguments {
 		name := a.Word.Name()
 		if a.Of != nil {
 			name += "(" + a.Of.Name() + ")"
 		}
-		for _, old := range names {
-			if old == name {
-				panic(newFault(diag.DeclaredTwice, a.Word.Span(), fmt.Sprintf("the argument '%s' is named twice", name), "an argument is named once"))
-			}
+		if named[name] {
+			panic(newFault(diag.DeclaredTwice, a.Word.Span(), fmt.Sprintf("the argument '%s' is named twice", name), "an argument is named once"))
 		}
+		named[name] = true
 		names = append(names, name)
 		args = append(args, e.argument(a, f))
 	}

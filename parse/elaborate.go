@@ -18,6 +18,7 @@ import (
 type elaborator struct {
 	src    *diag.Source
 	file   *File
+	form   string // of the Lagrangian
 	faults diag.List
 	model  *Model
 	k      *field.Field
@@ -28,6 +29,7 @@ type elaborator struct {
 	anywhere bool                    // names may be used at any place: the text is not the model's
 	repeated map[*Statement]bool     // statements that may stand once and stand again
 	leaders  map[field.Gen]diag.Span // what the givens define
+	valued   map[field.Gen]diag.Span // what numbers gives a value
 	bound    map[string]field.Elem   // in the definition of a function: its arguments
 	gap      bool                    // a declaration could not be read, so unknown names prove nothing
 }
@@ -49,8 +51,9 @@ func Elaborate(file *File, b *budget.Budget) (*Model, error) {
 
 func newElaborator(file *File, b *budget.Budget) *elaborator {
 	k := field.New(b)
-	e := &elaborator{src: file.Source, file: file, k: k, symbols: map[string]*symbol{},
-		repeated: map[*Statement]bool{}, leaders: map[field.Gen]diag.Span{}}
+	e := &elaborator{src: file.Source, file: file, form: formOfLagrangian(file), k: k, symbols: map[string]*symbol{},
+		repeated: map[*Statement]bool{}, leaders: map[field.Gen]diag.Span{},
+		valued: map[field.Gen]diag.Span{}}
 	for _, word := range file.unread {
 		e.gap = e.gap || !slices.Contains(undeclaring, word)
 	}
@@ -116,6 +119,9 @@ var undeclaring = []string{"model", "clock", "given", "gauge", "sector", "lagran
 // report records a fault, unless it follows from another.
 func (e *elaborator) report(f *fault) {
 	if f.Kind == "" || e.gap && (f.Kind == diag.UnknownName || f.Kind == diag.FieldUnused) || len(e.file.unread) > 0 && f.Kind == diag.Missing {
+		return
+	}
+	if len(e.faults) >= maxFaults {
 		return
 	}
 	f.Source = e.src
@@ -236,9 +242,9 @@ func (e *elaborator) collectNames(x Expr, used map[string]bool) {
 	})
 }
 
-// form is the word for the form of the Lagrangian.
-func (e *elaborator) form() string {
-	for _, s := range e.file.Statements {
+// formOfLagrangian is the word for the form of the file's Lagrangian.
+func formOfLagrangian(file *File) string {
+	for _, s := range file.Statements {
 		if s.Lagrangian != nil {
 			return s.Lagrangian.Form.Text
 		}
@@ -246,7 +252,7 @@ func (e *elaborator) form() string {
 	return "quadratic"
 }
 
-func (e *elaborator) quadratic() bool { return e.form() == "quadratic" }
+func (e *elaborator) quadratic() bool { return e.form == "quadratic" }
 
 // complete refuses a model that lacks a part.
 func (e *elaborator) complete() {

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"strings"
 	"testing"
+	"time"
 
 	"remnant/expr/budget"
 	"remnant/expr/field"
@@ -339,6 +340,41 @@ func TestElaborationIsDeterministic(t *testing.T) {
 	for range 5 {
 		if again := terms(load(t, src.Text)); again != first {
 			t.Fatalf("two readings differ:\n%s\n%s", first, again)
+		}
+	}
+}
+
+// TestLargeInputs: texts of a megabyte are read or refused in a time that grows with
+// their length.
+func TestLargeInputs(t *testing.T) {
+	many := func(n int, item func(i int) string) string {
+		var b strings.Builder
+		for i := range n {
+			b.WriteString(item(i))
+		}
+		return b.String()
+	}
+	const tail = "\nfields u\nlagrangian quadratic = u'^2\n"
+	for _, c := range []struct {
+		why, text string
+		faults    int
+	}{
+		{"many declarations", "constants c" + many(50000, func(i int) string { return fmt.Sprintf(", c%d", i) }) + tail, 0},
+		{"the same one many times", "constants c" + strings.Repeat(", c", 50000) + tail, maxFaults},
+		{"many abbreviations", many(20000, func(i int) string { return fmt.Sprintf("let x%d = %d\n", i, i) }) + tail, 0},
+		{"many unknown names", many(20000, func(i int) string { return fmt.Sprintf("let x%d = y%d\n", i, i) }) + tail, maxFaults},
+		{"many statements that cannot be read", strings.Repeat("let 2\n", 20000) + tail, maxFaults},
+		{"many terms", tail[:len(tail)-1] + strings.Repeat(" + u'^2", 20000) + "\n", 0},
+		{"comments alone behind a model", tail + strings.Repeat("# comment\n", 100000), 0},
+	} {
+		start := time.Now()
+		_, err := Load(diag.NewSource("large.act", c.text), nil)
+		var list diag.List
+		if err != nil && !errors.As(err, &list) || len(list) != c.faults {
+			t.Errorf("%s: %d faults, expected %d: %v", c.why, len(list), c.faults, err)
+		}
+		if d := time.Since(start); d > 20*time.Second {
+			t.Errorf("%s: took %v", c.why, d)
 		}
 	}
 }

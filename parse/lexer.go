@@ -29,6 +29,7 @@ const (
 	maxText     = 8 << 20 // bytes in a file
 	maxNumber   = 1000    // characters of a number
 	maxExponent = 1000    // decimal exponent of a number, and exponent of a power
+	maxFaults   = 100     // reported for one input
 )
 
 // grammarLexer is what the statement grammar knows of the lexer: the names of the

@@ -57,7 +57,7 @@ var formNames = map[string][]string{
 }
 
 func (e *elaborator) reserved(name string) bool {
-	return slices.Contains(reservedNames, name) || slices.Contains(formNames[e.form()], name)
+	return slices.Contains(reservedNames, name) || slices.Contains(formNames[e.form], name)
 }
 
 // declare enters a name. It returns nil, with the fault recorded, if that is not allowed.
@@ -94,7 +94,7 @@ func (e *elaborator) reservedHint(name string) string {
 	if slices.Contains(elementaryNames, name) {
 		return name + " is an elementary function"
 	}
-	return fmt.Sprintf("%s is a quantity of the %s form", name, e.form())
+	return fmt.Sprintf("%s is a quantity of the %s form", name, e.form)
 }
 
 func (e *elaborator) enter(s *symbol) {
@@ -122,6 +122,9 @@ func (e *elaborator) lookup(n *Name) *symbol {
 
 // unknown says that a name is not declared, and what may have been meant.
 func (e *elaborator) unknown(n *Name) *fault {
+	if len(e.faults) >= maxFaults {
+		return &fault{} // it would not be shown, and the search takes time
+	}
 	hint := "names are declared in constants, background, functions, fields or let"
 	if n.Name == "H" {
 		hint = "H is known where the scale factor a is declared in 'background'"

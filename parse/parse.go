@@ -72,7 +72,11 @@ func Parse(src *diag.Source) (*File, diag.List) {
 			continue
 		}
 		statement, err := parseLine(l)
-		if err != nil {
+		switch {
+		case err != nil && len(faults) >= maxFaults:
+			file.unread = append(file.unread, l.first())
+			continue
+		case err != nil:
 			err.Source = src
 			faults = append(faults, err.Diagnostic)
 			file.unread = append(file.unread, l.first())
@@ -92,7 +96,7 @@ func firstOfEach(faults diag.List, lines []line) diag.List {
 		for next < len(lines) && lines[next].start <= f.Span.Start {
 			next++
 		}
-		if next != last {
+		if next != last && len(kept) < maxFaults {
 			kept = append(kept, f)
 		}
 		last = next

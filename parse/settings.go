@@ -19,7 +19,7 @@ func (e *elaborator) rest(s *Statement) {
 	case s.Sector != nil && s.Sector.Text != "scalar":
 		panic(newFault(diag.NotYetSupported, s.Sector.Span(), fmt.Sprintf("the %s sector is not yet supported", s.Sector.Text), "sector scalar can be reduced"))
 	case s.Fields != nil && !e.quadratic():
-		panic(newFault(diag.WrongForm, s.At, fmt.Sprintf("the %s form has its own perturbations", e.form()), "the gauge chooses among A, B, zeta, E and dphi"))
+		panic(newFault(diag.WrongForm, s.At, fmt.Sprintf("the %s form has its own perturbations", e.form), "the gauge chooses among A, B, zeta, E and dphi"))
 	case s.Keep != nil && e.quadratic():
 		e.keep(s)
 	case s.Small != nil:
@@ -69,16 +69,16 @@ func (e *elaborator) linear(x Expr) []LinearTerm {
 const maxSeriesOrder = 100
 
 func (e *elaborator) small(c *SmallClause) {
+	named := map[*symbol]bool{}
 	for _, w := range c.Names {
 		sym := e.lookup(&Name{node{w.Span()}, w.Text, w.Name()})
 		if sym.kind != symbolConstant && sym.kind != symbolBackground {
 			panic(newFault(diag.NotASymbol, w.Span(), fmt.Sprintf("'%s' is %s and cannot be small", w.Text, kindNames[sym.kind]), "a constant or a function of time is small"))
 		}
-		for _, g := range e.model.Small {
-			if g == sym.gen {
-				panic(newFault(diag.DeclaredTwice, w.Span(), fmt.Sprintf("'%s' is named twice", w.Text), "a parameter is named once"))
-			}
+		if named[sym] {
+			panic(newFault(diag.DeclaredTwice, w.Span(), fmt.Sprintf("'%s' is named twice", w.Text), "a parameter is named once"))
 		}
+		named[sym] = true
 		e.model.Small = append(e.model.Small, sym.gen)
 	}
 	n, ok := new(big.Int).SetString(c.Order.Text, 10)
@@ -109,13 +109,12 @@ func (e *elaborator) number(eq *Equation) {
 		}
 		panic(newFault(diag.NotASymbol, eq.Left.X.Span(), fmt.Sprintf("'%s' cannot be given like this", brief(eq.Left.X)), hint))
 	}
-	for _, old := range e.model.Numbers {
-		if old.Gen == g {
-			f := newFault(diag.DeclaredTwice, eq.Left.X.Span(), fmt.Sprintf("'%s' has two values", brief(eq.Left.X)), "one value is allowed")
-			f.Related = []diag.Related{{Span: old.Span, Label: "the first one"}}
-			panic(f)
-		}
+	if old, ok := e.valued[g]; ok {
+		f := newFault(diag.DeclaredTwice, eq.Left.X.Span(), fmt.Sprintf("'%s' has two values", brief(eq.Left.X)), "one value is allowed")
+		f.Related = []diag.Related{{Span: old, Label: "the first one"}}
+		panic(f)
 	}
+	e.valued[g] = eq.Span()
 	e.model.Numbers = append(e.model.Numbers, NumberDecl{g, initial, e.numeric(eq.Right.X), eq.Span()})
 }
 
