@@ -48,42 +48,6 @@ func Linear(terms []LinearTerm) Node {
 	return Sum(out...)
 }
 
-// maxInverse is the highest power of k² that Solution moves to the left side.
-const maxInverse = 4
-
-// Solution is the equation name = Σ terms, with the Laplacian on the left where the terms
-// divide by k²: ∂²ψ = a²εζ' − ∂²ζ/H. Where k stands in another denominator it stays.
-func Solution(name string, terms []LinearTerm) Node {
-	k, ok := wavenumberIn(terms)
-	for n := 0; ok && n <= maxInverse; n++ {
-		scaled := make([]LinearTerm, len(terms))
-		coefs := make([]field.Elem, len(terms))
-		for i, t := range terms {
-			scaled[i] = t
-			for range n {
-				scaled[i].Coef = scaled[i].Coef.Mul(k).Mul(k).Neg()
-			}
-			coefs[i] = scaled[i].Coef
-		}
-		if _, ok := splitAll(coefs); ok {
-			return Equation(Spatial(name, 0, 2*n), Linear(scaled))
-		}
-	}
-	return Equation(Symbol(name, 0), Linear(terms))
-}
-
-// wavenumberIn finds k in the coefficients.
-func wavenumberIn(terms []LinearTerm) (field.Elem, bool) {
-	for _, t := range terms {
-		for _, g := range t.Coef.Gens() {
-			if f := t.Coef.Field(); f.Info(g).Kind == field.Wavenumber {
-				return f.Gen(g), true
-			}
-		}
-	}
-	return field.Elem{}, false
-}
-
 // Quadratic is Σ qₙ (u⁽ⁿ⁾)², highest n first, gradients before masses, without the ½ of the
 // action.
 func Quadratic(name string, q []field.Elem) Node {

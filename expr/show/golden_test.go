@@ -24,7 +24,6 @@ var update = flag.Bool("update", false, "write the golden files anew")
 //
 //	elem EXPR
 //	linear                   then lines NAME ORDER: EXPR
-//	solution NAME            then the same
 //	action CLOCK NAME        then q₀, q₁, … one a line
 //	matrix CLOCK NAME NAME   then lines symmetric|antisymmetric N A B: EXPR
 func TestGolden(t *testing.T) {
@@ -138,10 +137,6 @@ func (w *world) input(text string) (n show.Node, value *field.Elem, err error) {
 		var terms []show.LinearTerm
 		terms, err = w.linear(lines)
 		n = show.Linear(terms)
-	case "solution":
-		var terms []show.LinearTerm
-		terms, err = w.linear(lines)
-		n = show.Solution(names[0], terms)
 	case "action":
 		var q []field.Elem
 		for _, l := range lines {
