@@ -12,10 +12,12 @@ import "math/big"
 // divHeap divides word coefficients on one-word monomials.
 func (o Ops) divHeap(b *builder, p, q operand, bound uint64) quotient {
 	pe, qe, guard := p.exps, q.exps, b.lay.guard[0]
-	var heapBuf [stackRows]entry
-	var rowBuf [3][stackRows]int32
-	h := rowHeap{heap: heapBuf[:0], next: rowBuf[0][:0]}
-	at, ready := rowBuf[1][:0], rowBuf[2][:0] // at[i] is the divisor term that row i meets next
+	w := newWorkspace(0)
+	h, at, ready := w.rowHeap, w.at, w.ready
+	defer func() {
+		*w = workspace{h, at, ready} // which may have grown
+		w.release()
+	}()
 	b.reserve(1 + len(pe)/len(qe))
 	for k := 0; k < len(pe) || len(h.heap) > 0; {
 		var a acc // the remainder with the opposite sign

@@ -12,6 +12,7 @@ package poly
 import (
 	"math/big"
 	"math/bits"
+	"sync"
 )
 
 // checkEvery is the number of terms of a result between two looks at the budget.
@@ -101,22 +102,42 @@ func (h *rowHeap) pop() int32 {
 	return chain
 }
 
-// stackRows is the number of rows up to which the heap needs no allocation.
-const stackRows = 32
+// workspace is a heap with the positions of its rows. Small products are the commonest
+// operation of all, so workspaces are used again.
+type workspace struct {
+	rowHeap
+	at    []int32 // at[i] is the position of row i's head in the longer factor
+	ready []int32 // rows that have given their head
+}
+
+var workspaces = sync.Pool{New: func() any { return new(workspace) }}
+
+// newWorkspace has n rows, none of them begun, and an empty heap.
+func newWorkspace(n int) *workspace {
+	w := workspaces.Get().(*workspace)
+	if cap(w.at) < n {
+		*w = workspace{rowHeap{make([]entry, 0, n), make([]int32, n)}, make([]int32, n), make([]int32, 0, n)}
+	}
+	w.heap, w.ready = w.heap[:0], w.ready[:0]
+	w.next, w.at = w.next[:n], w.at[:n]
+	clear(w.at)
+	return w
+}
+
+// release gives the workspace back, unless it is large.
+func (w *workspace) release() {
+	if cap(w.at) <= checkEvery {
+		workspaces.Put(w)
+	}
+}
 
 // mulHeap multiplies word coefficients on one-word monomials.
 func (o Ops) mulHeap(b *builder, p, q operand) {
 	pe, pc, qe, qc := p.exps, p.co, q.exps, q.co
 	n := len(pe)
-	var heapBuf [stackRows]entry
-	var rowBuf [3 * stackRows]int32
-	heap, row := heapBuf[:0], rowBuf[:]
-	if n > stackRows {
-		heap, row = make([]entry, 0, n), make([]int32, 3*n)
-	}
-	h := rowHeap{heap: heap, next: row[:n]}
-	at := row[n : 2*n] // at[i] is the position of row i's head in q
-	ready := row[2*n : 2*n]
+	w := newWorkspace(n)
+	defer w.release()
+	h, at, ready := w.rowHeap, w.at, w.ready // local, to be fast
 	small := maxBits(pc)+maxBits(qc)+bits.Len(uint(n)) <= 63
 	b.reserve(min(n*len(qe), n+2*len(qe)))
 	h.push(pe[0]+qe[0], 0)
