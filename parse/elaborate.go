@@ -79,6 +79,7 @@ func (e *elaborator) passes() {
 	e.builtins()
 	e.each(e.declarations)
 	e.each(e.functions)
+	e.gauge()
 	e.clockRelations()
 	e.each(e.given)
 	e.related = true
@@ -196,7 +197,12 @@ func (e *elaborator) lagrangian(s *Statement) {
 		return
 	}
 	e.model.LagrangianSpan = s.At
-	if form := s.Lagrangian.Form; form.Text != "quadratic" {
+	form := s.Lagrangian.Form
+	if form.Text == "covariant" {
+		e.model.Covariant = e.covariant(s.Lagrangian.Value.X)
+		return
+	}
+	if form.Text != "quadratic" {
 		panic(newFault(diag.NotYetSupported, form.Span(), fmt.Sprintf("a Lagrangian of the %s form is not yet supported", form.Text),
 			"a quadratic Lagrangian can be reduced: lagrangian quadratic = …"))
 	}

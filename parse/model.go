@@ -37,8 +37,13 @@ type Model struct {
 	Relations  []RelationDecl // in the order of the numbers that K knows them by
 	Lets       []Let
 
-	Quadratic      []Term // the Lagrangian
+	Quadratic      []Term // the Lagrangian of the quadratic form
+	Covariant      Tensor // the Lagrangian of the covariant form; nil in the others
 	LagrangianSpan diag.Span
+
+	Gauge     Gauge
+	GaugeSpan diag.Span // the Lagrangian's where no gauge is chosen
+	Sector    Sector
 
 	Keep       *Keep // nil if the file does not choose
 	Small      []field.Gen
@@ -46,6 +51,18 @@ type Model struct {
 	Numbers    []NumberDecl
 
 	scope *elaborator // resolves names that are given later, such as those of a point
+}
+
+// Scalars lists the scalar fields of a covariant model: the functions of time that are not
+// part of the metric.
+func (m *Model) Scalars() []field.Gen {
+	var out []field.Gen
+	for _, b := range m.Background {
+		if b.Name != "a" && b.Name != "H" {
+			out = append(out, b.Gen)
+		}
+	}
+	return out
 }
 
 // Declared is a constant or a background function.

@@ -9,12 +9,14 @@ import (
 	"remnant/expr/budget"
 	"remnant/expr/field"
 	"remnant/parse"
+	"remnant/rules"
 )
 
 // Result is a reduction. It is not changed after it was made.
 type Result struct {
 	Model            *parse.Model
-	Initial          System // the quadratic form of the Lagrangian
+	Background       []rules.Equation // of a covariant model, as derived; nil for a quadratic one
+	Initial          System           // the quadratic form of the Lagrangian
 	Steps            []Step
 	Remaining        System
 	Weights          []int // half the order of each remaining field in the leading matrix
@@ -37,8 +39,16 @@ var ErrCount = errors.New("the independent count of solutions disagrees with the
 func Reduce(m *parse.Model) (r *Result, err error) {
 	defer budget.Catch(&err)
 	b := m.K.Budget()
+	var background []rules.Equation
+	if m.Covariant != nil {
+		x, err := rules.Expand(m)
+		if err != nil {
+			return nil, err
+		}
+		m, background = x.Model, x.Equations
+	}
 	b.Stage("writing the Lagrangian as a quadratic form")
-	r = &Result{Model: m, Initial: Quadratic(m)}
+	r = &Result{Model: m, Background: background, Initial: Quadratic(m)}
 	e := start(m, r.Initial)
 	if m.Keep != nil {
 		r.Requested = m.Keep.Name

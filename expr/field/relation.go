@@ -430,3 +430,12 @@ func mergeSources(a, b []int) []int {
 	slices.Sort(out)
 	return slices.Compact(out)
 }
+
+// RelateFor adds the relation e = 0 with the given leader, where e is linear in it.
+func (f *Field) RelateFor(e Elem, leader Gen, source int) error {
+	return f.settle([]posted{{e, leader, true, []int{source}}})
+}
+
+// CanLead reports whether the relation e = 0 could be solved for g: the numerator of e is
+// linear in g and holds no derivative of g.
+func (f *Field) CanLead(e Elem, g Gen) bool { return f.canLead(g, e.num) }

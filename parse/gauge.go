@@ -1,0 +1,91 @@
+package parse
+
+import (
+	"slices"
+
+	"remnant/parse/diag"
+)
+
+// Gauges and sectors of the covariant and adm forms, and the perturbations that each has.
+
+// Gauge is a choice of perturbations that are set to zero.
+type Gauge uint8
+
+const (
+	Unitary   Gauge = iota // δφ = E = 0
+	Flat                   // ζ = E = 0
+	Newtonian              // B = E = 0
+	Open                   // every perturbation is kept
+)
+
+// String is the word of the notation.
+func (g Gauge) String() string { return gaugeWords[g] }
+
+// Sector is a representation of the rotations.
+type Sector uint8
+
+const (
+	ScalarSector Sector = iota
+	VectorSector
+	TensorSector
+)
+
+// String is the word of the notation.
+func (s Sector) String() string { return sectorWords[s] }
+
+// Perturbations lists the fields of a gauge and sector by their names in the notation, in the
+// order in which the quadratic form has them: the metric's, then those of the scalars, of
+// which the unitary gauge removes the first.
+func Perturbations(g Gauge, s Sector, scalars []string) []string {
+	switch s {
+	case VectorSector:
+		if g == Open {
+			return []string{"S", "W"}
+		}
+		return []string{"S"}
+	case TensorSector:
+		return []string{"gamma"}
+	}
+	out := map[Gauge][]string{
+		Unitary: {"A", "B", "zeta"}, Flat: {"A", "B"}, Newtonian: {"A", "zeta"}, Open: {"A", "B", "zeta", "E"},
+	}[g]
+	for i, name := range scalars {
+		if g != Unitary || i > 0 {
+			out = append(out, "d"+name)
+		}
+	}
+	return out
+}
+
+// gauge reads gauge and sector of a covariant model and enters its perturbations, which no
+// statement declares. Without a statement it is the unitary gauge where there is a scalar
+// field, and else the newtonian one.
+func (e *elaborator) gauge() {
+	m := e.model
+	if e.form != "covariant" {
+		return
+	}
+	chosen := false
+	for _, s := range e.file.Statements {
+		switch {
+		case e.repeated[s]:
+		case s.Gauge != nil:
+			m.Gauge, m.GaugeSpan, chosen = Gauge(slices.Index(gaugeWords, s.Gauge.Text)), s.Gauge.Span(), true
+		case s.Sector != nil:
+			m.Sector = Sector(slices.Index(sectorWords, s.Sector.Text))
+		case s.Lagrangian != nil && !chosen:
+			m.GaugeSpan = s.At
+		}
+	}
+	var scalars []string
+	for _, g := range m.Scalars() {
+		scalars = append(scalars, e.k.Info(g).Name)
+	}
+	if !chosen && len(scalars) == 0 {
+		m.Gauge = Newtonian
+	}
+	for i, name := range Perturbations(m.Gauge, m.Sector, scalars) {
+		m.Fields = append(m.Fields, FieldDecl{name, diag.Span{}})
+		e.enter(&symbol{name: name, kind: symbolField, index: i})
+	}
+}

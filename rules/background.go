@@ -1,0 +1,210 @@
+package rules
+
+// The background equations: the Euler–Lagrange expressions of A, ζ and the scalars at first
+// order, made into oriented relations. The Bianchi identity makes one of them follow from
+// the others; it is verified before it is used.
+
+import (
+	"errors"
+	"fmt"
+	"slices"
+
+	"remnant/expr/field"
+	"remnant/expr/poly"
+	"remnant/parse"
+	"remnant/parse/diag"
+)
+
+// Equation is a background equation: Value = 0, found by varying From.
+type Equation struct {
+	From    string
+	Value   field.Elem // as derived
+	Leader  field.Gen  // what it was solved for
+	Solved  bool       // false: it follows from the equations and relations before it
+	Reduced field.Elem // what was left of it by those before, where it was solved
+}
+
+// firstOrder expands the Lagrangian in uniform A, ζ and scalars, on which k = 0 depends, and
+// returns their Euler–Lagrange expressions in that order.
+func (x *expansion) firstOrder() ([]Equation, error) {
+	names := []string{"A", "zeta"}
+	for _, s := range x.scalars {
+		names = append(names, "d"+x.m.K.Info(s).Name)
+	}
+	r := *x.ring
+	r.uniform = true
+	e := x.evaluator(&r, names)
+	l := e.volume.mul(e.scalar(x.m.Covariant))
+	var out []Equation
+	for i, n := range names {
+		out = append(out, Equation{From: n, Value: r.euler(l, i, x.density)})
+	}
+	return out, x.bianchi(out)
+}
+
+// bianchi verifies the identity that invariance under a change of the time variable gives,
+// δA = N̄⁻¹(N̄T)′, δζ = (a′/a)T, δφ = φ′T:
+//
+//	−N̄ (E_A/N̄)′ + (a′/a) E_ζ + Σ φ′ E_φ = 0.
+func (x *expansion) bianchi(eqs []Equation) error {
+	n := x.m.Lapse
+	sum := eqs[0].Value.Div(n).D().Mul(n).Neg()
+	sum = sum.Add(x.m.A.D().Div(x.m.A).Mul(eqs[1].Value))
+	for i, s := range x.scalars {
+		sum = sum.Add(x.m.K.Jet(s, 1).Mul(eqs[i+2].Value))
+	}
+	if !sum.IsZero() {
+		return fmt.Errorf("rules: the background equations violate the Bianchi identity by %v; this is a fault of the program, please report the model", sum)
+	}
+	return nil
+}
+
+// solve makes the equations relations of the field, each reduced by those before.
+func (x *expansion) solve(eqs []Equation) error {
+	k := x.m.K
+	for i := range eqs {
+		k.Budget().Stage("solving the background equation of " + eqs[i].From)
+		e, err := eqs[i].Value.Normal()
+		if err != nil {
+			return x.noSolution(eqs[i], eqs[i].Value)
+		}
+		e = e.Lowest()
+		eqs[i].Reduced = e
+		if e.IsZero() {
+			continue
+		}
+		x.m.Relations = append(x.m.Relations, parse.RelationDecl{Text: "the equation of " + eqs[i].From, Auto: true})
+		number := len(x.m.Relations) - 1
+		eqs[i].Leader, err = x.orient(e, number)
+		if err != nil {
+			return x.relationError(eqs[i], e, err)
+		}
+		eqs[i].Solved = true
+	}
+	return nil
+}
+
+// orient chooses the leader of e = 0 and adds the relation: the first class that holds a
+// jet in which e is linear, else a rate that enters squared.
+func (x *expansion) orient(e field.Elem, number int) (field.Gen, error) {
+	k := x.m.K
+	var best field.Gen
+	bestRank := []int(nil)
+	for _, g := range e.Num().Vars() {
+		if rank := x.rank(g); rank != nil && k.CanLead(e, g) && slices.Compare(rank, bestRank) > 0 {
+			best, bestRank = g, rank
+		}
+	}
+	if bestRank != nil {
+		return best, k.RelateFor(e, best, number)
+	}
+	return x.orientSquare(e, number)
+}
+
+// rank orders what may lead: H⁽ⁿ⁾ with n ≥ 1, an undifferentiated function, a jet by scalars
+// alone, a constant, φ⁽ⁿ⁾ with n ≥ 1; within a class the highest derivative, then the first.
+func (x *expansion) rank(g field.Gen) []int {
+	in := x.m.K.Info(g)
+	switch in.Kind {
+	case field.Function:
+		switch {
+		case in.Order == 0:
+			return nil
+		case in.Name == "H":
+			return []int{5, in.Order, -int(g)}
+		case in.Name != "a":
+			return []int{1, in.Order, -int(g)}
+		}
+	case field.FreeFunction:
+		total := 0
+		for i, n := range in.Index {
+			total += n
+			if n > 0 && !x.isScalar(in.Fn.Args[i]) {
+				return nil
+			}
+		}
+		if total == 0 {
+			return []int{4, 0, -int(g)}
+		}
+		return []int{3, total, -int(g)}
+	case field.Constant:
+		if in.Name != "pi" {
+			return []int{2, 0, -int(g)}
+		}
+	}
+	return nil
+}
+
+func (x *expansion) isScalar(arg field.Elem) bool {
+	for _, s := range x.scalars {
+		if arg.Equal(x.m.K.Gen(s)) {
+			return true
+		}
+	}
+	return false
+}
+
+// orientSquare solves c·H² + rest = 0 by H → √(−rest/c), where only H² enters.
+func (x *expansion) orientSquare(e field.Elem, number int) (field.Gen, error) {
+	k := x.m.K
+	n := e.Num()
+	for _, g := range n.Vars() {
+		in := k.Info(g)
+		c := n.CoeffsIn(g)
+		if in.Kind != field.Function || in.Name == "a" || in.Name != "H" && in.Order == 0 || len(c) != 3 || !c[1].IsZero() || derivativeStands(k, n, g) {
+			continue
+		}
+		lead, err := k.Poly(c[2])
+		if err != nil {
+			continue
+		}
+		rest, err := k.Poly(c[0])
+		if err != nil {
+			continue
+		}
+		k.AssumeNonzero(lead, "the relation for "+in.Name+" divides by it")
+		root, err := k.Sqrt(rest.Neg().Div(lead))
+		if err != nil {
+			continue
+		}
+		return g, k.RelateGen(g, root, number)
+	}
+	return 0, &field.Unsolvable{Rest: e}
+}
+
+// derivativeStands reports whether a derivative of g stands in n beside g.
+func derivativeStands(k *field.Field, n poly.Poly, g field.Gen) bool {
+	for _, h := range n.Vars() {
+		if h != g && k.Info(h).Kind == field.Function && k.Base(h) == k.Base(g) && k.Info(h).Order > k.Info(g).Order {
+			return true
+		}
+	}
+	return false
+}
+
+func (x *expansion) relationError(eq Equation, rest field.Elem, err error) error {
+	var bad *field.Contradiction
+	var stuck *field.Unsolvable
+	switch {
+	case errors.As(err, &bad):
+		return x.noSolution(eq, bad.Follows)
+	case errors.As(err, &stuck):
+		return x.refuse(NoLeader, x.m.LagrangianSpan,
+			fmt.Sprintf("the background equation of %s can be solved for none of its quantities: %s = 0", eq.From, show(rest)),
+			"a relation is needed: given phi' = …")
+	}
+	return err
+}
+
+// noSolution says which equation the declared background violates, and by what.
+func (x *expansion) noSolution(eq Equation, left field.Elem) error {
+	list := x.refuse(NoSolution, x.m.LagrangianSpan,
+		fmt.Sprintf("the background does not solve the equation of %s: %s = 0 is left", eq.From, show(left)),
+		"the relations of the background must allow a solution").(diag.List)
+	for _, r := range x.m.Relations {
+		if !r.Auto {
+			list[0].Related = append(list[0].Related, diag.Related{Span: r.Span, Label: "this is given"})
+		}
+	}
+	return list
+}
