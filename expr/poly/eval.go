@@ -69,33 +69,43 @@ func (p Poly) EvalRat(at func(Var) *big.Rat) *big.Rat {
 		return new(big.Rat)
 	}
 	l := p.d.lay
-	num, den := make([][]*big.Int, len(l.vars)), make([][]*big.Int, len(l.vars))
+	deg := l.degrees(p.d.exps)
+	num, den := make([]bigPowers, len(deg)), make([]bigPowers, len(deg))
 	common := big.NewInt(1)
-	for i, d := range l.degrees(p.d.exps) {
+	for i, d := range deg {
 		x := at(l.vars[i])
-		num[i], den[i] = bigPowers(x.Num(), d), bigPowers(x.Denom(), d)
-		common.Mul(common, den[i][d])
+		num[i], den[i] = newBigPowers(x.Num()), newBigPowers(x.Denom())
+		common.Mul(common, den[i].pow(d))
 	}
 	sum := new(big.Int)
 	for k := range p.d.len() {
 		e := p.d.mono(k)
 		c := new(big.Int).Set(p.d.coef(k))
-		for i := range num {
+		for i, d := range deg {
 			x := l.exp(e, i)
-			c.Mul(c, num[i][x])
-			c.Mul(c, den[i][uint64(len(den[i]))-1-x])
+			c.Mul(c, num[i].pow(x))
+			c.Mul(c, den[i].pow(d-x))
 		}
 		sum.Add(sum, c)
 	}
 	return new(big.Rat).SetFrac(sum, common)
 }
 
-// bigPowers is 1, x, …, xᵈ.
-func bigPowers(x *big.Int, d uint64) []*big.Int {
-	out := make([]*big.Int, d+1)
-	out[0] = bigOne
-	for i := range d {
-		out[i+1] = new(big.Int).Mul(out[i], x)
+// bigPowers gives the powers of one integer, each computed once.
+type bigPowers struct {
+	base *big.Int
+	pows map[uint64]*big.Int
+}
+
+func newBigPowers(x *big.Int) bigPowers {
+	return bigPowers{x, map[uint64]*big.Int{0: bigOne, 1: x}}
+}
+
+func (t *bigPowers) pow(e uint64) *big.Int {
+	if x, ok := t.pows[e]; ok {
+		return x
 	}
-	return out
+	x := new(big.Int).Exp(t.base, new(big.Int).SetUint64(e), nil)
+	t.pows[e] = x
+	return x
 }

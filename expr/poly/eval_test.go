@@ -158,3 +158,17 @@ func TestCoeffsIn(t *testing.T) {
 		}
 	})
 }
+
+// TestEvalRatHighPower: the size of a value, not of an exponent, is what counts.
+func TestEvalRatHighPower(t *testing.T) {
+	p := FromMono([]Power{{0, 1 << 31}, {1, 3}}).Add(FromInt(1))
+	got := p.EvalRat(func(v Var) *big.Rat {
+		if v == 0 {
+			return big.NewRat(-1, 1)
+		}
+		return big.NewRat(1, 2)
+	})
+	if got.Cmp(big.NewRat(9, 8)) != 0 {
+		t.Errorf("got %v, want 9/8", got)
+	}
+}

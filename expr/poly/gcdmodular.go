@@ -19,8 +19,10 @@ const (
 	// remainder sequences. A random failure has probability about
 	// (terms · degrees)/2⁶², so more than one hints at an error of method.
 	attempts = 6
-	// maxDense is the greatest degree for which dense univariate images are used.
-	maxDense = 1 << 14
+	// maxDense is the greatest degree for which dense univariate images are used, and
+	// maxPoints that of a variable in which h is interpolated.
+	maxDense  = 1 << 14
+	maxPoints = 1 << 11
 )
 
 // gcdModular is the gcd of primitive polynomials, not constant, that no monomial
@@ -149,6 +151,9 @@ func (c *candidates) zippel(try int) (Poly, bool) {
 	for i, v := range order[1:] {
 		k, _ := slices.BinarySearch(c.vars, v)
 		z.bound[i+1] = c.bound[k] + gamma.Degree(v)
+	}
+	if slices.Max(z.bound) > maxPoints {
+		return Poly{}, false
 	}
 	f := newPrimeField(primeAt(try))
 	s, out := z.first(f)

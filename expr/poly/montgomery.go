@@ -1,13 +1,9 @@
 // Arithmetic modulo word-sized primes in Montgomery form ([Montgomery1985]), for the
-// inner loops of the gcd; the primes; dense univariate gcds.
+// inner loops of the gcd.
 
 package poly
 
-import (
-	"math/big"
-	"math/bits"
-	"sync"
-)
+import "math/bits"
 
 // primeField is the integers modulo an odd prime p < 2⁶². An element a is held as
 // a·2⁶⁴ mod p.
@@ -113,99 +109,4 @@ func (f *primeField) coefs(d *data) []uint64 {
 		out[i] = f.in(Modulus(f.p).FromInt(d.co[i]))
 	}
 	return out
-}
-
-// trim drops leading zeros of a dense univariate polynomial, constant term first.
-func trim(a []uint64) []uint64 {
-	for len(a) > 0 && a[len(a)-1] == 0 {
-		a = a[:len(a)-1]
-	}
-	return a
-}
-
-// gcdDense is the monic gcd of two dense univariate polynomials, which it overwrites and
-// of which at least one is not zero. Method: Euclid's algorithm, without divisions until
-// the end. Cost: O(len(a)·len(b)) products.
-func (f *primeField) gcdDense(a, b []uint64) []uint64 {
-	a, b = trim(a), trim(b)
-	if len(a) < len(b) {
-		a, b = b, a
-	}
-	for len(b) > 1 {
-		for len(a) >= len(b) {
-			f.eliminate(a, b)
-			a = trim(a[:len(a)-1])
-		}
-		a, b = b, a
-	}
-	if len(b) == 1 {
-		b[0] = f.one
-		return b
-	}
-	if lead := a[len(a)-1]; lead != f.one {
-		inv := f.invert(lead)
-		for i := range a {
-			a[i] = f.mul(a[i], inv)
-		}
-	}
-	return a
-}
-
-// eliminate puts a → lc(b)·a − lc(a)·xᵏ·b, k the difference of degrees.
-func (f *primeField) eliminate(a, b []uint64) {
-	g := *f
-	la, lb := a[len(a)-1], b[len(b)-1]
-	low, high := a[:len(a)-len(b)], a[len(a)-len(b):]
-	for i, x := range low {
-		low[i] = g.mul(x, lb)
-	}
-	b = b[:len(high)]
-	for i, x := range high {
-		high[i] = g.sub(g.mul(x, lb), g.mul(b[i], la))
-	}
-}
-
-// primes is the primes below 2⁶² in decreasing order, as far as they were asked for.
-var primes struct {
-	sync.Mutex
-	list []uint64
-}
-
-// primeAt is the i-th of the primes.
-func primeAt(i int) uint64 {
-	primes.Lock()
-	defer primes.Unlock()
-	for len(primes.list) <= i {
-		c := uint64(1<<62 - 1)
-		if n := len(primes.list); n > 0 {
-			c = primes.list[n-1] - 2
-		}
-		// The Baillie–PSW test, to which ProbablyPrime(0) comes down, has no exceptions
-		// below 2⁶⁴.
-		for !new(big.Int).SetUint64(c).ProbablyPrime(0) {
-			c -= 2
-		}
-		primes.list = append(primes.list, c)
-	}
-	return primes.list[i]
-}
-
-// stream is a deterministic sequence of pseudorandom words (splitmix64, [Steele2014]).
-type stream uint64
-
-func (s *stream) next() uint64 {
-	*s += 0x9e3779b97f4a7c15
-	x := uint64(*s)
-	x = (x ^ x>>30) * 0xbf58476d1ce4e5b9
-	x = (x ^ x>>27) * 0x94d049bb133111eb
-	return x ^ x>>31
-}
-
-// element is a pseudorandom element that is not zero.
-func (f *primeField) element(s *stream) uint64 {
-	for {
-		if x := s.next() % f.p; x != 0 {
-			return x
-		}
-	}
 }
