@@ -115,6 +115,36 @@ func TestFactorsSplitOnTheWay(t *testing.T) {
 	}
 }
 
+// Numerator, denominator and generators of a fraction belong together, also after a factor of
+// the basis was split since it was made.
+func TestPartsAgreeAfterSplit(t *testing.T) {
+	w := newWorld()
+	m, h, q := w.f.Gen(w.m), w.f.Gen(w.h), w.f.Gen(w.q)
+	one := w.f.Int(1)
+	e := m.Add(q).Mul(m.Add(q).Mul(h.Add(one)).Inv()) // one factor below
+	if gens := e.Gens(); len(gens) != 3 {
+		t.Fatalf("%v was cancelled too early to test anything", e)
+	}
+	h.Add(one).Inv() // splits it
+	same(t, "Num/Den", w.fraction(t, e), h.Add(one).Inv())
+	if gens := e.Gens(); len(gens) != 1 || gens[0] != w.h || e.Has(w.q) {
+		t.Errorf("%v holds the generators %v", e, gens)
+	}
+}
+
+func (w *world) fraction(t *testing.T, e Elem) Elem {
+	t.Helper()
+	num, err := w.f.Poly(e.Num())
+	if err != nil {
+		t.Fatal(err)
+	}
+	den, err := w.f.Poly(e.Den())
+	if err != nil {
+		t.Fatal(err)
+	}
+	return num.Div(den)
+}
+
 func mustSqrt(t *testing.T, e Elem) Elem {
 	t.Helper()
 	s, err := e.f.Sqrt(e)

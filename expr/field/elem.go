@@ -63,8 +63,8 @@ func (e Elem) Rat() (*big.Rat, bool) {
 	return r, true
 }
 
-// Num is the numerator, with integer coefficients.
-func (e Elem) Num() poly.Poly { return e.num }
+// Num is the numerator over Den, with integer coefficients.
+func (e Elem) Num() poly.Poly { return e.live().num }
 
 // DenInt is the integer in the denominator, positive.
 func (e Elem) DenInt() *big.Int {
@@ -98,6 +98,7 @@ func (e Elem) Terms() int {
 
 // Gens lists the generators that stand in e, in increasing order.
 func (e Elem) Gens() []Gen {
+	e = e.live()
 	seen := map[Gen]bool{}
 	for _, v := range e.num.Vars() {
 		seen[v] = true
@@ -117,6 +118,7 @@ func (e Elem) Gens() []Gen {
 
 // Has reports whether generator g stands in e.
 func (e Elem) Has(g Gen) bool {
+	e = e.live()
 	if e.num.Has(g) {
 		return true
 	}
