@@ -27,7 +27,7 @@ func (s System) solveAuxiliary(p int) Step {
 		Kind:      Auxiliary,
 		Solutions: []Solution{{s.Names[p], s.Names[p], s.combination(row, p)}},
 		Nonzero:   c.Vanishable(),
-		After:     after,
+		after:     after,
 	}
 }
 

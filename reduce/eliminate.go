@@ -6,6 +6,8 @@ package reduce
 import (
 	"fmt"
 	"strings"
+
+	"remnant/expr/field"
 )
 
 // elimination is the state of a run.
@@ -24,6 +26,29 @@ type GaugeError struct {
 }
 
 func (e *GaugeError) Error() string { return "the action has a gauge direction" }
+
+// eliminate runs the elimination on s, through names for the coefficients where s is large.
+// count is the independent count of solutions, against which names are checked; fields are
+// those of the model, keep the one to keep or "".
+func eliminate(s System, wave field.Elem, count Count, fields []string, keep string) (*elimination, error) {
+	fresh := func(s System) *elimination {
+		e := &elimination{now: s, keep: keep, fields: fields, taken: map[string]bool{}}
+		for _, n := range append(append([]string{}, fields...), s.Names...) {
+			e.taken[n] = true
+		}
+		return e
+	}
+	if s.D.Terms() > nameAbove && count.Gauge == 0 {
+		if named, n, ok := nameCoefficients(s, wave); ok {
+			e := fresh(named)
+			if e.run() == nil && 2*half(e.weights) == count.Solutions && e.putBack(n) {
+				return e, nil
+			}
+		}
+	}
+	e := fresh(s)
+	return e, e.run()
+}
 
 // run eliminates until only propagating fields are left.
 func (e *elimination) run() error {
@@ -83,7 +108,7 @@ func (e *elimination) apply(s Step) {
 		}
 	}
 	e.steps = append(e.steps, s)
-	e.now = s.After
+	e.now = s.after
 }
 
 // rename gives a redefined field the next free number: zeta, zeta_1, zeta_2.

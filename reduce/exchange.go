@@ -48,7 +48,7 @@ func exchange(m *parse.Model, free *elimination) bool {
 		Kind:      Exchanged,
 		Solutions: []Solution{{Name: x, Sum: []Addend{{back, m.Keep.Name}}}},
 		Nonzero:   append(b.Vanishable(), solved.Nonzero...),
-		After:     solved.After,
+		after:     solved.after,
 	})
 	free.keep, free.weights = m.Keep.Name, []int{1}
 	return true

@@ -107,7 +107,7 @@ func (s System) exposeHidden(keep int, name func(string) string) (Step, []int, b
 			{oper.New(s.K.Int(1)), after.Names[i]}, {shift, s.Names[q]}}})
 	}
 	after.D = s.D.Congruence(e).Map(lowest)
-	step.After = after
+	step.after = after
 	return step, m, true
 }
 

@@ -32,6 +32,6 @@ func (s System) solveMultiplier(l, m int) Step {
 			{s.Names[l], s.Names[m], s.combination(lambda)},
 		},
 		Nonzero: c.Vanishable(),
-		After:   after,
+		after:   after,
 	}
 }

@@ -61,7 +61,7 @@ func eliminateBy(s System, keep string, choose func([]pivot) pivot) System {
 		if len(all) == 0 {
 			return s
 		}
-		s = s.solve(choose(all)).After
+		s = s.solve(choose(all)).after
 	}
 }
 

@@ -34,7 +34,8 @@ const (
 // keptRemains looks whether the kept field carries the mode. It does not if it could be
 // solved for, had it not been kept. A new variable that holds the velocity may still take the
 // mode's place; anything else is refused, naming what propagates.
-func keptRemains(m *parse.Model, initial System, e *elimination) (*elimination, error) {
+func keptRemains(r *Result, e *elimination) (*elimination, error) {
+	m := r.Model
 	keep := e.now.index(e.keep)
 	if m.Keep == nil || keep < 0 || len(e.now.Names) < 2 {
 		return e, nil
@@ -42,11 +43,8 @@ func keptRemains(m *parse.Model, initial System, e *elimination) (*elimination, 
 	if p, ok := e.now.choosePivot(-1); !ok || p.p != keep && p.q != keep {
 		return e, nil
 	}
-	free := &elimination{now: initial, fields: e.fields, taken: map[string]bool{}}
-	for _, n := range e.fields {
-		free.taken[n] = true
-	}
-	if err := free.run(); err != nil {
+	free, err := eliminate(r.Initial, m.Wavenumber, r.Count, r.Initial.Names, "")
+	if err != nil {
 		return nil, err
 	}
 	if exchange(m, free) {

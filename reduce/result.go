@@ -49,22 +49,22 @@ func Reduce(m *parse.Model) (r *Result, err error) {
 	}
 	b.Stage("writing the Lagrangian as a quadratic form")
 	r = &Result{Model: m, Background: background, Initial: Quadratic(m)}
-	e := start(m, r.Initial)
 	if m.Keep != nil {
 		r.Requested = m.Keep.Name
 	}
-	if err := e.run(); err != nil {
-		return nil, gaugeDiagnostic(m, err)
-	}
-	if e, err = keptRemains(m, r.Initial, e); err != nil {
-		return nil, err
-	}
-	r.Steps, r.Remaining, r.Weights = e.steps, e.now, e.weights
-	r.DegreesOfFreedom = half(e.weights)
 	b.Stage("counting the solutions")
 	if r.Count, err = r.Initial.CountSolutions(); err != nil {
 		return nil, err
 	}
+	e, err := eliminate(start(m, r.Initial), m.Wavenumber, r.Count, r.Initial.Names, r.Requested)
+	if err != nil {
+		return nil, gaugeDiagnostic(m, err)
+	}
+	if e, err = keptRemains(r, e); err != nil {
+		return nil, err
+	}
+	r.Steps, r.Remaining, r.Weights = e.steps, e.now, e.weights
+	r.DegreesOfFreedom = half(e.weights)
 	if r.Count.Gauge != 0 || r.Count.Solutions != 2*r.DegreesOfFreedom {
 		return nil, ErrCount
 	}
@@ -76,21 +76,16 @@ func Reduce(m *parse.Model) (r *Result, err error) {
 	return r, nil
 }
 
-func start(m *parse.Model, initial System) *elimination {
-	e := &elimination{now: initial, taken: map[string]bool{}}
-	for _, f := range m.Fields {
-		e.fields = append(e.fields, f.Name)
-		e.taken[f.Name] = true
+// start is the system to eliminate in: with a new variable, if the model keeps one.
+func start(m *parse.Model, initial System) System {
+	if m.Keep == nil || m.Keep.Definition == nil {
+		return initial
 	}
-	if m.Keep == nil {
-		return e
+	multiplier := "multiplier"
+	for initial.index(multiplier) >= 0 || multiplier == m.Keep.Name {
+		multiplier += "_1"
 	}
-	e.keep = m.Keep.Name
-	e.taken[e.keep] = true
-	if m.Keep.Definition != nil {
-		e.now = initial.define(e.keep, e.rename("multiplier"), m.Keep.Definition, m.Wavenumber)
-	}
-	return e
+	return initial.define(m.Keep.Name, multiplier, m.Keep.Definition, m.Wavenumber)
 }
 
 func (r *Result) analyse() (err error) {

@@ -35,7 +35,21 @@ type Step struct {
 	Kind      StepKind
 	Solutions []Solution
 	Nonzero   []field.Elem // factors assumed not to vanish
-	After     System       // what stands after the step
+	after     System       // what stands after the step, under names if those are not nil
+	names     *naming
+}
+
+// After is the system that stands after the step. Where coefficients were named, their values
+// are put back when it is asked for.
+func (s Step) After() System {
+	if s.names == nil {
+		return s.after
+	}
+	out, err := s.names.system(s.after)
+	if err != nil {
+		panic(err) // the pivots, which alone are divided by, were found not to vanish
+	}
+	return out
 }
 
 func (s System) combination(row []oper.Oper, skip ...int) []Addend {

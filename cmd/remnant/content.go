@@ -98,7 +98,7 @@ func (f *findings) solved() *section {
 			rows = append(rows, solutionRow(f.Model, st, sol, number))
 		}
 		if f.steps {
-			s.blocks = append(s.blocks, block{rows: rows}, f.actionBlock(st.After))
+			s.blocks = append(s.blocks, block{rows: rows}, f.actionBlock(st.After()))
 			rows = nil
 		}
 	}
@@ -115,7 +115,7 @@ func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int
 	case st.Kind == reduce.Redefined:
 		r.note = words("redefines it, to expose a hidden constraint")
 	case sol.Equation == "":
-		r.note = join("", words("exchanges it for "), maths(show.Symbol(st.After.Names[0], 0)))
+		r.note = join("", words("exchanges it for "), maths(show.Symbol(sol.Sum[0].Name, 0)))
 	default:
 		r.note = join("", words("from the "), maths(show.Symbol(sol.Equation, 0)), words(" equation"))
 	}

@@ -87,7 +87,7 @@ func (m Matrix) NormalForm() (MatrixNormalForm, error) {
 					c = c.Neg()
 				}
 				into[half][a][b] = c
-				rest.Set(a, b, rest.At(a, b).Sub(normalTerm(c, n)))
+				rest.Set(a, b, rest.At(a, b).Sub(NormalTerm(c, n)))
 			}
 		}
 		m = rest
@@ -95,8 +95,9 @@ func (m Matrix) NormalForm() (MatrixNormalForm, error) {
 	return out, nil
 }
 
-// normalTerm is the operator that a normal-form coefficient of total order n stands for.
-func normalTerm(c field.Elem, n int) Oper {
+// NormalTerm is the operator that a normal-form coefficient of total order n stands for:
+// (−D)ᵐ c Dᵐ for n = 2m, and ½[(−D)ᵐ c Dᵐ⁺¹ − (−D)ᵐ⁺¹ c Dᵐ] for n = 2m + 1.
+func NormalTerm(c field.Elem, n int) Oper {
 	half := n / 2
 	if n%2 == 0 {
 		return sandwich(c, half, half)
