@@ -123,6 +123,7 @@ func (f *Field) workIn(p posted) ([]posted, error) {
 	if rest.IsZero() {
 		return nil, nil
 	}
+	rest = rest.Lowest()
 	n, assumed := f.squareFreeUnknown(rest)
 	if n.IsConst() || !f.holdsJet(n) {
 		follows := rest

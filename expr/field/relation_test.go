@@ -238,3 +238,15 @@ func TestRelationForFunctionOfTwoArguments(t *testing.T) {
 		t.Errorf("P,φ has the Taylor series %v, its value %v: %v", x, y, err)
 	}
 }
+
+// What a relation says is read off in lowest terms: (m + H)(φ − q) over one factor
+// (m + H)(m + φ) gives φ = q, and nothing of H.
+func TestRelationInLowestTerms(t *testing.T) {
+	w := newWorld()
+	f := w.f
+	m, h, phi, q := f.Gen(w.m), f.Gen(w.h), f.Gen(w.phi), f.Gen(w.q)
+	e := m.Add(h).Mul(phi.Sub(q)).Mul(m.Add(h).Mul(m.Add(phi)).Inv())
+	relate(t, f.Relate(e, 1))
+	same(t, "φ", f.Gen(w.phi), q)
+	same(t, "H", f.Gen(w.h), h)
+}
