@@ -3,7 +3,6 @@ package field
 import (
 	"context"
 	"math/big"
-	"slices"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -203,5 +202,3 @@ func same(t fataler, law string, a, b Elem) {
 		t.Fatalf("%s: %v and %v", law, a, b)
 	}
 }
-
-func sorted(gs ...Gen) []Gen { return slices.Sorted(slices.Values(gs)) }
