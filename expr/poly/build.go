@@ -28,6 +28,21 @@ func (b *builder) reserve(n int) {
 	b.exps, b.co = make([]uint64, 0, n*b.lay.words), make([]int64, 0, n)
 }
 
+// clip gives back room of which less than half is used.
+func (b *builder) clip() {
+	if 2*len(b.exps) < cap(b.exps) {
+		b.exps, b.co, b.bg = exact(b.exps), exact(b.co), exact(b.bg)
+	}
+}
+
+// exact is a copy of s without spare room.
+func exact[E any](s []E) []E {
+	if s == nil {
+		return nil
+	}
+	return append(make([]E, 0, len(s)), s...)
+}
+
 func (b *builder) len() int {
 	if b.bg != nil {
 		return len(b.bg)

@@ -10,6 +10,14 @@ func Gcd(p, q Poly) Poly { return Ops{}.Gcd(p, q) }
 
 // Gcd is the greatest common divisor of p and q over ℤ, content included, with positive
 // leading coefficient; Gcd(0, 0) = 0.
+//
+// Method: integer and monomial contents are split off, and the shorter polynomial is
+// tried as a divisor of the other. Images modulo a prime in every common variable bound
+// the degrees, and mostly show that nothing is left. Else the sparse modular algorithm
+// ([Zippel1979], [Zippel1990]) finds the gcd and division proves it. For degrees beyond
+// its reach, some thousands, there are remainder sequences ([Brown1971]), whose cost can
+// be exponential in the number of variables. Cost otherwise: for each variable, its
+// degree times the terms of a coefficient in the main variable, evaluations of p and q.
 func (o Ops) Gcd(p, q Poly) Poly {
 	if p.IsZero() {
 		return q.positive()

@@ -125,6 +125,17 @@ func (l *layout) index(v Var) int {
 	return -1
 }
 
+// contains reports whether all of vars, increasing, are among the variables of l.
+func (l *layout) contains(vars []Var) bool {
+	i := 0
+	for _, v := range l.vars {
+		if i < len(vars) && vars[i] == v {
+			i++
+		}
+	}
+	return i == len(vars)
+}
+
 // orOf is the bitwise or of all monomials: field by field it is zero exactly where the
 // variable is absent, and as long in bits as the greatest exponent.
 func (l *layout) orOf(exps []uint64) []uint64 {

@@ -32,6 +32,7 @@ func (o Ops) Mul(p, q Poly) Poly {
 	} else {
 		o.mulTerms(&b, a, c)
 	}
+	o.Budget.Check(b.len())
 	if l.words > 1 || l.width == 0 {
 		return b.canonical()
 	}
@@ -63,10 +64,11 @@ func (a *operand) big() {
 // overflows: a canonical one if that has one word, else one word with fields as narrow
 // as the degrees allow, else several words.
 func productLayout(p, q *data) (l *layout, pe, qe []uint64) {
-	if p.lay.words == 1 && p.lay.same(q.lay) {
-		if (or1(p.exps)+or1(q.exps))&p.lay.over[0] == 0 {
-			return p.lay, p.exps, q.exps
-		}
+	if e, ok := p.lay.admit(q); ok && (or1(p.exps)+or1(e))&p.lay.over[0] == 0 {
+		return p.lay, p.exps, e
+	}
+	if e, ok := q.lay.admit(p); ok && (or1(q.exps)+or1(e))&q.lay.over[0] == 0 {
+		return q.lay, e, q.exps
 	}
 	dp, dq := p.lay.degrees(p.exps), q.lay.degrees(q.exps)
 	vars := p.lay.union(q.lay)

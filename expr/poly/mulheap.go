@@ -20,7 +20,8 @@ func (o Ops) mulHeap(b *builder, p, q operand) {
 	defer w.release()
 	h, at, ready := w.rowHeap, w.at, w.ready // local, to be fast
 	small := maxBits(pc)+maxBits(qc)+bits.Len(uint(n)) <= 63
-	b.reserve(min(n*len(qe), n+2*len(qe)))
+	b.reserve(max(min(n*len(qe), checkEvery), n+len(qe)))
+	defer b.clip()
 	h.push(pe[0]+qe[0], 0)
 	for len(h.heap) > 0 {
 		key := h.heap[0].key

@@ -257,3 +257,18 @@ func (l *layout) join(m *layout, need int) *layout {
 	}
 	return newLayout(vars, need)
 }
+
+// admit is the monomials of d in the layout l, if that has one word and they fit.
+func (l *layout) admit(d *data) (exps []uint64, ok bool) {
+	switch {
+	case l.words > 1:
+		return nil, false
+	case l.same(d.lay):
+		return d.exps, true
+	case len(d.lay.vars) == 0:
+		return make([]uint64, d.len()), true
+	case !l.contains(d.lay.vars) || d.need() >= int(l.width):
+		return nil, false
+	}
+	return d.lay.repack(d.exps, l), true
+}

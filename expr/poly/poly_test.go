@@ -226,3 +226,26 @@ func TestSize(t *testing.T) {
 		t.Errorf("a Poly has %d bytes", s)
 	}
 }
+
+// TestAllocations: what small operands, the commonest, may allocate: the result's three
+// parts, and a little for what must be repacked.
+func TestAllocations(t *testing.T) {
+	s := stream(1)
+	f, g := benchRandom(&s, 3, 8), benchRandom(&s, 3, 8)
+	fg, x := f.Mul(g), FromVar(1)
+	for name, c := range map[string]struct {
+		most float64
+		op   func()
+	}{
+		"sum":           {3, func() { f.Add(g) }},
+		"negative":      {2, func() { f.Neg() }},
+		"product":       {6, func() { f.Mul(g) }},
+		"one by a term": {6, func() { f.Mul(x) }},
+		"equality":      {0, func() { f.Equal(g) }},
+		"quotient":      {16, func() { fg.DivExact(g) }},
+	} {
+		if n := testing.AllocsPerRun(100, c.op); n > c.most {
+			t.Errorf("%s: %v allocations, at most %v expected", name, n, c.most)
+		}
+	}
+}
