@@ -134,14 +134,14 @@ func (f *findings) actionBlock(s reduce.System) block {
 	if len(s.Names) == 0 {
 		return block{sentence: words("The action is zero.")}
 	}
-	form, err := s.D.NormalForm()
+	form, err := s.Form()
 	if err != nil {
 		panic(err) // every step keeps the matrix self-adjoint
 	}
 	if len(s.Names) == 1 {
 		q := make([]field.Elem, len(form.Symmetric))
 		for n := range q {
-			q[n] = form.Symmetric[n][0][0].Lowest()
+			q[n] = form.Symmetric[n][0][0]
 		}
 		return block{display: show.Action(clockName(f.Model.Clock), s.Names[0], q)}
 	}
@@ -365,9 +365,11 @@ func (f *findings) shortSpeed(rows []row) []row {
 // equations are the equation of motion and the canonical variable; short, if one of them is
 // given by other expressions of the page.
 func (f *findings) equations() (rows []row, short bool) {
-	motion := f.motion()
-	if f.Single.Kinetic != nil && f.long(f.Single.EquationOfMotion...) {
+	var motion phrase
+	if eom := f.Single.EquationOfMotion; eom == nil || f.Single.Kinetic != nil && f.long(eom...) {
 		motion, short = f.motionByCoefficients(), true
+	} else {
+		motion = f.motion()
 	}
 	rows = []row{{label: words("equation of motion"), value: motion}}
 	freq, ok := f.Frequency2()
@@ -382,12 +384,15 @@ func (f *findings) equations() (rows []row, short bool) {
 		omega2, short = show.Product(show.Power(show.Symbol("c_s", 0), 2), show.Power(show.Symbol("k", 0), 2)), true
 	}
 	mode := show.Sum(v(2), show.Product(show.Sum(omega2, show.Neg(curvature)), v(0)))
-	square, second := maths(show.Elem(*f.Single.ZSquared)), maths(show.Elem(*f.Single.ZppOverZ))
+	square := maths(show.Elem(*f.Single.ZSquared))
 	if f.Single.Kinetic != nil && f.long(*f.Single.ZSquared) {
 		square, short = join("", maths(show.Elem(f.Model.Lapse.Div(f.Model.A))), words(" kinetic")), true
 	}
-	if f.long(*f.Single.ZppOverZ) {
-		second, short = words("½(z²)''/z² − ¼((z²)'/z²)²"), true
+	second := words("½(z²)''/z² − ¼((z²)'/z²)²")
+	if zpp := f.Single.ZppOverZ; zpp == nil || f.long(*zpp) {
+		short = true
+	} else {
+		second = maths(show.Elem(*zpp))
 	}
 	canonical := join(", ",
 		compare(v(0), equals, show.Product(show.Symbol("z", 0), show.Symbol(f.Variable, 0))),
@@ -410,6 +415,9 @@ func (f *findings) motion() phrase {
 
 // motionByCoefficients is (𝒦u′)′ = 𝒢∂²u − ℳu in words.
 func (f *findings) motionByCoefficients() phrase {
+	if f.Single.Kinetic == nil {
+		return join("", words("(q₁ "), maths(show.Symbol(f.Variable, 1)), words(")' = q₀ "), maths(show.Symbol(f.Variable, 0)))
+	}
 	out := join("", words("(kinetic "), maths(show.Symbol(f.Variable, 1)), words(")' = gradient "), maths(show.Spatial(f.Variable, 0, 2)))
 	if !f.Single.Mass.IsZero() {
 		out = join("", out, words(" − mass "), maths(show.Symbol(f.Variable, 0)))

@@ -47,7 +47,7 @@ func spin(w io.Writer, b *budget.Budget, stop <-chan struct{}) {
 	bar := progressbar.NewOptions(-1,
 		progressbar.OptionSetWriter(w),
 		progressbar.OptionSpinnerType(14),
-		progressbar.OptionSetElapsedTime(true),
+		progressbar.OptionSetElapsedTime(false),
 		progressbar.OptionClearOnFinish(),
 	)
 	tick := time.NewTicker(progressStep)
