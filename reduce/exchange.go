@@ -20,10 +20,10 @@ import (
 // exchange keeps the defined variable u of the model in place of the one field that the
 // elimination free left; false if that is not possible.
 func exchange(m *parse.Model, free *elimination) bool {
-	if m.Keep.Definition == nil || len(free.now.Names) != 1 || free.now.D.At(0, 0).Order() != 2 {
+	if m.Keep.Definition == nil || len(free.now.Names) != 1 || free.now.Matrix().At(0, 0).Order() != 2 {
 		return false
 	}
-	x, d := free.now.Names[0], free.now.D.At(0, 0)
+	x, d := free.now.Names[0], free.now.Matrix().At(0, 0)
 	q, err := d.NormalForm()
 	if err != nil {
 		return false

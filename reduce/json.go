@@ -7,6 +7,8 @@ package reduce
 import (
 	"bytes"
 	"encoding/json"
+	"fmt"
+	"strings"
 
 	"remnant/expr/field"
 	"remnant/expr/oper"
@@ -58,7 +60,7 @@ type Quantities struct {
 
 	SoundSpeedSquared  *string  `json:"soundSpeedSquared"`  // the limit k → ∞; null if infinite
 	SoundSpeedEquation []string `json:"soundSpeedEquation"` // several fields: [c0, c1, …] of Σ cᵢ (c_s²)ⁱ = 0
-	EquationOfMotion   []string `json:"equationOfMotion"`   // one field: [c0, c1, …, 1] of Σ cᵢ u⁽ⁱ⁾ = 0
+	EquationOfMotion   *string  `json:"equationOfMotion"`   // one field: "u'' + … = 0"; with the products underived where they are large
 
 	Canonical *CanonicalJSON `json:"canonical"` // one field of second order
 }
@@ -166,7 +168,7 @@ func (r *Result) Document(expansions []*Expansion, at *Values) *Document {
 		Background: []EquationJSON{}, Assumptions: []string{}, Eliminated: []EliminateJSON{},
 		Variable: orNull(r.Variable), Requested: orNull(r.Requested), Model: orNull(r.Model.Title),
 		Variables: append([]string{}, r.Remaining.Names...), DegreesOfFreedom: r.DegreesOfFreedom,
-		Quantities: quantities(r.Single, r.Several), Stability: []StabilityJSON{},
+		Quantities: r.quantities(r.Single, r.Several), Stability: []StabilityJSON{},
 	}
 	for _, rule := range r.Model.K.Rules() {
 		eq := show.Equation(show.Generator(r.Model.K, rule.Leader), show.Elem(rule.Value))
@@ -189,7 +191,7 @@ func (r *Result) Document(expansions []*Expansion, at *Values) *Document {
 		d.Series = append(d.Series, r.seriesJSON(x))
 	}
 	if at != nil {
-		d.At = &AtJSON{Point: []AssignmentJSON{}, Quantities: quantities(at.Single, at.Several)}
+		d.At = &AtJSON{Point: []AssignmentJSON{}, Quantities: r.quantities(at.Single, at.Several)}
 		for _, a := range at.Point {
 			d.At.Point = append(d.At.Point, AssignmentJSON{show.Notation(show.Generator(r.Model.K, a.Gen)), text(a.Value)})
 		}
@@ -284,15 +286,15 @@ func (s Step) json() []EliminateJSON {
 	return out
 }
 
-func quantities(one *Single, more *Several) Quantities {
+func (r *Result) quantities(one *Single, more *Several) Quantities {
 	var q Quantities
 	if one != nil {
 		q.Operator.Single = texts(one.Q)
 		q.Kinetic, q.Gradient, q.Mass = optionalText(one.Kinetic), optionalText(one.Gradient), optionalText(one.Mass)
 		q.SoundSpeedSquared = optionalText(one.SoundSpeed2)
-		q.EquationOfMotion = texts(one.EquationOfMotion)
+		q.EquationOfMotion = r.motionText(one)
 		if one.ZSquared != nil {
-			q.Canonical = &CanonicalJSON{text(*one.ZSquared), text(*one.ZppOverZ)}
+			q.Canonical = &CanonicalJSON{text(*one.ZSquared), r.pumpText(one)}
 		}
 	}
 	if more != nil {
@@ -300,6 +302,44 @@ func quantities(one *Single, more *Several) Quantities {
 		q.SoundSpeedEquation = texts(more.SoundSpeeds)
 	}
 	return q
+}
+
+// motionText is Σ cᵢ u⁽ⁱ⁾ = 0 or, where that is not written out, Σ (−1)ⁿ (qₙ u⁽ⁿ⁾)⁽ⁿ⁾ = 0.
+func (r *Result) motionText(one *Single) *string {
+	u := func(n int) string { return show.Notation(show.Symbol(r.Variable, n)) }
+	var out string
+	if c := one.EquationOfMotion; c != nil {
+		var terms []show.Node
+		for i := len(c) - 1; i >= 0; i-- {
+			if !c[i].IsZero() {
+				terms = append(terms, show.Product(show.Elem(c[i]), show.Symbol(r.Variable, i)))
+			}
+		}
+		out = show.Notation(show.Sum(terms...))
+	} else {
+		for n := len(one.Q) - 1; n >= 0; n-- {
+			sign := " + "
+			if n%2 != 0 {
+				sign = " - "
+			}
+			if out != "" || n%2 != 0 {
+				out += sign
+			}
+			out += "((" + text(one.Q[n]) + ")*" + u(n) + ")" + strings.Repeat("'", n)
+		}
+		out = strings.TrimSpace(out)
+	}
+	out += " = 0"
+	return &out
+}
+
+// pumpText is z″/z, underived where it is not written out.
+func (r *Result) pumpText(one *Single) string {
+	if one.ZppOverZ != nil {
+		return text(*one.ZppOverZ)
+	}
+	z, eta := "("+text(*one.ZSquared)+")", "("+text(r.Model.A.Div(r.Model.Lapse))+")"
+	return fmt.Sprintf("%s*(%s*%s')'/(2*%s) - (%s*%s')^2/(4*%s^2)", eta, eta, z, z, eta, z, z)
 }
 
 func matricesText(ms [][][]field.Elem) [][][]string {

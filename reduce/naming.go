@@ -32,22 +32,17 @@ type naming struct {
 	memo   map[field.Gen]field.Elem
 }
 
-// nameCoefficients rewrites s with a name for each coefficient that is no number; false
-// where k stands in a denominator.
+// nameCoefficients rewrites s with a name for each coefficient of its Lagrangian that is no
+// number; false where k stands in a denominator.
 func nameCoefficients(s System, wave field.Elem) (System, *naming, bool) {
-	form, err := s.D.NormalForm()
-	if err != nil {
-		return s, nil, false
-	}
 	n := &naming{k: s.K, sub: field.New(s.K.Budget()), wave: wave,
 		index: map[field.Gen]int{}, memo: map[field.Gen]field.Elem{}}
 	subWave := n.sub.Gen(n.sub.Wavenumber("k"))
-	gen := wave.Num().Vars()[0]
-	out := System{K: n.sub, Names: s.Names, D: oper.NewMatrix(len(s.Names), len(s.Names))}
-	put := func(order, a, b int, c field.Elem, sign int64) bool {
-		parts, ok := c.CoeffsIn(gen)
+	b := oper.NewMatrix(len(s.Names), len(s.Names))
+	for _, t := range lagrangian(s) {
+		parts, ok := t.c.CoeffsIn(wave.Num().Vars()[0])
 		if !ok {
-			return false
+			return s, nil, false
 		}
 		var named field.Elem
 		for p, v := range parts {
@@ -55,27 +50,67 @@ func nameCoefficients(s System, wave field.Elem) (System, *naming, bool) {
 				named = named.Add(n.name(v).Mul(subWave.Pow(p)))
 			}
 		}
-		op := oper.NormalTerm(named, order)
-		out.D.Set(a, b, out.D.At(a, b).Add(op))
-		if a != b {
-			out.D.Set(b, a, out.D.At(b, a).Add(oper.NormalTerm(named.Scale(sign, 1), order)))
-		}
-		return true
+		b.Set(t.a, t.b, b.At(t.a, t.b).Add(t.form(named)))
 	}
-	for order := s.D.Order(); order >= 0; order-- {
-		list, sign := form.Symmetric, int64(1)
-		if order%2 != 0 {
-			list, sign = form.Antisymmetric, -1
-		}
-		for a := range s.Names {
-			for b := range a + 1 {
-				if c := list[order/2][b][a]; !c.IsZero() && !put(order, b, a, c, sign) {
-					return s, nil, false
-				}
+	return System{K: n.sub, Names: s.Names, D: b.Add(b.Adjoint())}, n, true
+}
+
+// bilinear is the term c·u_a⁽ⁱ⁾u_b⁽ʲ⁾ of a Lagrangian.
+type bilinear struct {
+	a, i int
+	b, j int
+	c    field.Elem
+}
+
+// form is (−D)ⁱ c Dʲ, the place of the term in B with 𝒟 = B + B†.
+func (t bilinear) form(c field.Elem) oper.Oper {
+	op := oper.Mono(c, t.j)
+	for range t.i {
+		op = op.D().Neg()
+	}
+	return op
+}
+
+// lagrangian writes the form as a Lagrangian in which the two orders of a term differ by at
+// most one. A mixed term of odd order may be written with the derivative on either field;
+// that is taken which leaves less for the order below, so that no derivative of a
+// coefficient gets a name beside the coefficient.
+func lagrangian(s System) []bilinear {
+	var out []bilinear
+	for a := range s.Names {
+		for b := range a + 1 {
+			rest := s.D.At(b, a)
+			for !rest.IsZero() {
+				t, left := peel(rest, b, a)
+				out, rest = append(out, t), left
 			}
 		}
 	}
-	return out, n, true
+	return out
+}
+
+// peel takes the highest order off the entry (a,b), a ≤ b, of a form.
+func peel(entry oper.Oper, a, b int) (bilinear, oper.Oper) {
+	n := entry.Order()
+	half, c := n/2, entry.Lead()
+	if half%2 != 0 {
+		c = c.Neg()
+	}
+	if a == b { // self-adjoint: n is even, and the term stands once in B + B†
+		t := bilinear{a, half, b, half, c.Scale(1, 2)}
+		return t, entry.Sub(t.form(c))
+	}
+	t := bilinear{a, half, b, n - half, c}
+	left := entry.Sub(t.form(c))
+	if n%2 == 0 {
+		return t, left
+	}
+	// c u_a⁽ʰ⁾u_b⁽ʰ⁺¹⁾ is −c u_b⁽ʰ⁾u_a⁽ʰ⁺¹⁾ − c′ u_a⁽ʰ⁾u_b⁽ʰ⁾ up to a total derivative
+	other := bilinear{b, half, a, half + 1, c.Neg()}
+	if l := entry.Sub(other.form(other.c).Adjoint()); l.Terms() < left.Terms() {
+		return other, l
+	}
+	return t, left
 }
 
 // name gives a value its name: a number stays, and values that differ by a rational factor
@@ -127,8 +162,20 @@ func (n *naming) oper(a oper.Oper) (oper.Oper, error) {
 	return oper.New(c...), nil
 }
 
+// system puts the values into a system: into the normal form alone where one field is left,
+// whose matrix holds derivatives of it that nobody may ask for.
 func (n *naming) system(s System) (System, error) {
-	out := System{K: n.k, Names: s.Names, D: oper.NewMatrix(s.D.Rows(), s.D.Cols())}
+	out := System{K: n.k, Names: s.Names}
+	if len(s.Names) == 1 {
+		form, err := s.Form()
+		if err != nil {
+			return out, err
+		}
+		form, err = mapForm(form, n.elem)
+		out.form = &form
+		return out, err
+	}
+	out.D = oper.NewMatrix(s.D.Rows(), s.D.Cols())
 	for i := range s.D.Rows() {
 		for j := range s.D.Cols() {
 			a, err := n.oper(s.D.At(i, j))

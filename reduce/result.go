@@ -40,7 +40,7 @@ func Reduce(m *parse.Model) (r *Result, err error) {
 	defer budget.Catch(&err)
 	b := m.K.Budget()
 	var background []rules.Equation
-	if m.Covariant != nil {
+	if m.Covariant != nil || m.ADM != nil {
 		x, err := rules.Expand(m)
 		if err != nil {
 			return nil, err
@@ -93,11 +93,11 @@ func (r *Result) analyse() (err error) {
 	case 0:
 	case 1:
 		r.Variable = r.Remaining.Names[0]
-		if r.Single, err = analyseSingle(r.Model, r.Remaining.D.At(0, 0)); err == nil {
+		if r.Single, err = analyseSingle(r.Model, r.Remaining); err == nil {
 			r.Stability = r.Single.stability(r.Model)
 		}
 	default:
-		if r.Several, err = analyseSeveral(r.Model, r.Remaining.D); err == nil {
+		if r.Several, err = analyseSeveral(r.Model, r.Remaining); err == nil {
 			r.Stability = r.Several.stability(r.Weights)
 		}
 	}

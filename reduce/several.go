@@ -23,19 +23,10 @@ type Several struct {
 	Minors []field.Elem
 }
 
-func analyseSeveral(m *parse.Model, d oper.Matrix) (*Several, error) {
-	form, err := d.NormalForm()
+func analyseSeveral(m *parse.Model, d System) (*Several, error) {
+	form, err := d.Form()
 	if err != nil {
 		return nil, err
-	}
-	for _, list := range [][][][]field.Elem{form.Symmetric, form.Antisymmetric} {
-		for _, q := range list {
-			for a := range q {
-				for b := range q[a] {
-					q[a][b] = q[a][b].Lowest()
-				}
-			}
-		}
 	}
 	s := &Several{Form: form}
 	if len(form.Symmetric) == 2 {

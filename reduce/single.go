@@ -22,27 +22,39 @@ type Single struct {
 	SoundSpeed2 *field.Elem
 	GrowthInK   int
 
-	EquationOfMotion []field.Elem // cᵢ of Σ cᵢ u⁽ⁱ⁾ = 0, the highest 1
+	// EquationOfMotion holds the cᵢ of Σ cᵢ u⁽ⁱ⁾ = 0, the highest 1. It is nil where writing it
+	// out would be no gain: it is then read as Σ (−D)ⁿ qₙ Dⁿ u = 0.
+	EquationOfMotion []field.Elem
 
 	// Canonical variable v = zu at second order: v″ + (−(a²/N̄²)q₀/q₁ − z″/z) v = 0 where the
 	// primes of this equation are d/dη = (a/N̄)D.
 	ZSquared *field.Elem // z² = 𝒦N̄/a
-	ZppOverZ *field.Elem // ½(z²)″/z² − ¼((z²)′/z²)²
+	ZppOverZ *field.Elem // ½(z²)″/z² − ¼((z²)′/z²)²; nil where that is better left as it stands
 }
 
-func analyseSingle(m *parse.Model, d oper.Oper) (*Single, error) {
-	q, err := d.NormalForm()
+// Sizes, in terms, up to which derivatives of coefficients are written out. Each derivative
+// of a coefficient of a general theory multiplies its size by ten and more.
+const (
+	motionBelow = 150 // for the equation of motion
+	pumpBelow   = 60  // for z″/z, which holds second derivatives
+)
+
+func analyseSingle(m *parse.Model, d System) (*Single, error) {
+	form, err := d.Form()
 	if err != nil {
 		return nil, err
 	}
-	for i := range q {
-		q[i] = q[i].Lowest()
+	s := &Single{}
+	for _, q := range form.Symmetric {
+		s.Q = append(s.Q, q[0][0])
 	}
-	s := &Single{Q: q}
-	for i := 0; i <= d.Order(); i++ {
-		s.EquationOfMotion = append(s.EquationOfMotion, d.Coef(i).Div(d.Lead()).Lowest())
+	if n := len(s.Q); n > 0 && s.Q[n-1].Terms() <= motionBelow {
+		a := oper.FromNormalForm(s.Q)
+		for i := 0; i <= a.Order(); i++ {
+			s.EquationOfMotion = append(s.EquationOfMotion, a.Coef(i).Div(a.Lead()).Lowest())
+		}
 	}
-	if len(q) == 2 {
+	if len(s.Q) == 2 {
 		s.secondOrder(m)
 	}
 	return s, nil
@@ -57,21 +69,27 @@ func (s *Single) secondOrder(m *parse.Model) {
 		s.Kinetic, s.Gradient, s.Mass = &kin, &grad, &mass
 	}
 	frame := m.A.Div(m.Lapse).Pow(2)
-	ratio := q0.Neg().Div(q1).Mul(frame).Lowest() // c_s²k² at large k
-	if lead, n := leadingInK(ratio, k); n <= 2 {
-		if n < 2 {
-			lead = field.Elem{}
-		}
-		s.SoundSpeed2 = &lead
-	} else {
+	high, n := leadingInK(q0.Neg(), k) // c_s²k² at large k
+	low, n1 := leadingInK(q1, k)
+	switch n -= n1; {
+	case n > 2:
 		s.GrowthInK = n - 2
+	case n == 2:
+		c2 := high.Div(low).Mul(frame).Lowest()
+		s.SoundSpeed2 = &c2
+	default:
+		s.SoundSpeed2 = &field.Elem{}
 	}
 	z2 := q1.Mul(m.Lapse).Div(m.A).Lowest()
+	s.ZSquared = &z2
+	if z2.Terms() > pumpBelow {
+		return
+	}
 	dEta := func(e field.Elem) field.Elem { return e.D().Mul(m.A).Div(m.Lapse) }
 	d1 := dEta(z2)
 	log := d1.Div(z2)
 	zpp := dEta(d1).Div(z2).Scale(1, 2).Sub(log.Mul(log).Scale(1, 4)).Lowest()
-	s.ZSquared, s.ZppOverZ = &z2, &zpp
+	s.ZppOverZ = &zpp
 }
 
 // wavenumberGen is the generator k of the model.

@@ -13,6 +13,56 @@ type System struct {
 	K     *field.Field
 	Names []string
 	D     oper.Matrix
+
+	form *oper.MatrixNormalForm // where it is known; D may then be left out
+}
+
+// Form is the normal form of 𝒟, coefficients in lowest terms.
+func (s System) Form() (oper.MatrixNormalForm, error) {
+	if s.form != nil {
+		return *s.form, nil
+	}
+	form, err := s.D.NormalForm()
+	if err != nil {
+		return form, err
+	}
+	return mapForm(form, func(e field.Elem) (field.Elem, error) { return e.Lowest(), nil })
+}
+
+// Matrix is 𝒟, made from the normal form where only that is known.
+func (s System) Matrix() oper.Matrix {
+	if s.form == nil || s.D.Rows() > 0 {
+		return s.D
+	}
+	return s.form.Matrix(len(s.Names))
+}
+
+// mapForm applies fn to every coefficient of a normal form.
+func mapForm(m oper.MatrixNormalForm, fn func(field.Elem) (field.Elem, error)) (oper.MatrixNormalForm, error) {
+	apply := func(list [][][]field.Elem) ([][][]field.Elem, error) {
+		out := make([][][]field.Elem, len(list))
+		for n := range list {
+			out[n] = make([][]field.Elem, len(list[n]))
+			for a, row := range list[n] {
+				out[n][a] = make([]field.Elem, len(row))
+				for b, c := range row {
+					v, err := fn(c)
+					if err != nil {
+						return nil, err
+					}
+					out[n][a][b] = v
+				}
+			}
+		}
+		return out, nil
+	}
+	var out oper.MatrixNormalForm
+	var err error
+	if out.Symmetric, err = apply(m.Symmetric); err != nil {
+		return out, err
+	}
+	out.Antisymmetric, err = apply(m.Antisymmetric)
+	return out, err
 }
 
 // Quadratic writes the model's Lagrangian as a quadratic form. A term c·DᵗU·DˢV, with p and

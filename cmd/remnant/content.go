@@ -413,6 +413,23 @@ func (f *findings) motion() phrase {
 	return compare(show.Linear(terms), equals, show.Int(0))
 }
 
+// motionUnderived is Σ (−1)ⁿ (qₙ u⁽ⁿ⁾)⁽ⁿ⁾ = 0, by the names of the coefficients above it.
+func (f *findings) motionUnderived() phrase {
+	var out phrase
+	for n := len(f.Single.Q) - 1; n >= 0; n-- {
+		sign := " + "
+		switch {
+		case n%2 != 0:
+			sign = " − "
+		case out == nil:
+			sign = ""
+		}
+		out = join("", out, words(sign+"("), maths(show.Symbol(fmt.Sprint("q", n), 0)), words(" "), maths(show.Symbol(f.Variable, n)),
+			words(")"+strings.Repeat("'", n)))
+	}
+	return append(out, piece{words: " = 0"})
+}
+
 // motionByCoefficients is (𝒦u′)′ = 𝒢∂²u − ℳu in words.
 func (f *findings) motionByCoefficients() phrase {
 	if f.Single.Kinetic == nil {
@@ -535,7 +552,10 @@ func (f *findings) atPoint() *section {
 	s := &section{heading: join("", words("At "), list(point))}
 	if f.values.Single != nil {
 		rows := singleRows(f.values.Single)
-		for i, c := range f.values.Single.EquationOfMotion[:len(f.values.Single.EquationOfMotion)-1] {
+		for i, c := range f.values.Single.EquationOfMotion {
+			if i == len(f.values.Single.EquationOfMotion)-1 {
+				break // it is 1
+			}
 			label := join("", words("equation of motion, coefficient of "), maths(show.Symbol(f.Variable, i)))
 			rows = append(rows, row{label: label, value: maths(show.Elem(c))})
 		}

@@ -60,6 +60,25 @@ type MatrixNormalForm struct {
 	Antisymmetric [][][]field.Elem
 }
 
+// Matrix is the self-adjoint matrix of size n with this normal form.
+func (f MatrixNormalForm) Matrix(n int) Matrix {
+	m := NewMatrix(n, n)
+	add := func(list [][][]field.Elem, odd int) {
+		for half, q := range list {
+			for a := range n {
+				for b := range n {
+					if c := q[a][b]; !c.IsZero() {
+						m.Set(a, b, m.At(a, b).Add(normalTerm(c, 2*half+odd)))
+					}
+				}
+			}
+		}
+	}
+	add(f.Symmetric, 0)
+	add(f.Antisymmetric, 1)
+	return m
+}
+
 // NormalForm is the normal form of the self-adjoint matrix m. It fails if m is not
 // self-adjoint.
 func (m Matrix) NormalForm() (MatrixNormalForm, error) {
@@ -87,7 +106,7 @@ func (m Matrix) NormalForm() (MatrixNormalForm, error) {
 					c = c.Neg()
 				}
 				into[half][a][b] = c
-				rest.Set(a, b, rest.At(a, b).Sub(NormalTerm(c, n)))
+				rest.Set(a, b, rest.At(a, b).Sub(normalTerm(c, n)))
 			}
 		}
 		m = rest
@@ -95,9 +114,9 @@ func (m Matrix) NormalForm() (MatrixNormalForm, error) {
 	return out, nil
 }
 
-// NormalTerm is the operator that a normal-form coefficient of total order n stands for:
+// normalTerm is the operator that a normal-form coefficient of total order n stands for:
 // (−D)ᵐ c Dᵐ for n = 2m, and ½[(−D)ᵐ c Dᵐ⁺¹ − (−D)ᵐ⁺¹ c Dᵐ] for n = 2m + 1.
-func NormalTerm(c field.Elem, n int) Oper {
+func normalTerm(c field.Elem, n int) Oper {
 	half := n / 2
 	if n%2 == 0 {
 		return sandwich(c, half, half)
