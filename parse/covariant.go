@@ -27,6 +27,11 @@ func (e *elaborator) covariant(x Expr) Tensor {
 }
 
 func (e *elaborator) tensor(x Expr) Tensor {
+	if e.isADM() {
+		if t, ok := e.adm(x); ok {
+			return t
+		}
+	}
 	switch n := x.(type) {
 	case *Number:
 		return &TensorValue{node{n.At}, e.k.Rat(n.Value)}
@@ -144,6 +149,8 @@ func (e *elaborator) tensorFunction(x Expr) Tensor {
 func (e *elaborator) tensorArgument(a *Argument, use Expr) Tensor {
 	name := &Name{node{use.Span()}, a.Word.Text, a.Word.Name()}
 	switch {
+	case e.isADM():
+		return e.admName(name)
 	case a.Of != nil:
 		return &TensorKinetic{node{use.Span()}, e.lookup(&Name{node{use.Span()}, a.Of.Text, a.Of.Name()}).gen}
 	case name.Name == "t":
@@ -428,6 +435,8 @@ func letters(t Tensor) string {
 	switch n := t.(type) {
 	case *TensorCurvature:
 		return n.Letters
+	case *TensorSlice:
+		return n.Letters
 	case *TensorGrad:
 		return freeLetters(n.X) + n.Letters
 	case *TensorSum:
@@ -459,7 +468,7 @@ func freeLetters(t Tensor) string {
 // its own: those written twice on one tensor.
 func summedLetters(t Tensor) string {
 	switch t.(type) {
-	case *TensorCurvature, *TensorGrad:
+	case *TensorCurvature, *TensorSlice, *TensorGrad:
 		all, out := letters(t), ""
 		for _, l := range all {
 			if strings.Count(all, string(l)) == 2 && !strings.ContainsRune(out, l) {

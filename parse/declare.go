@@ -165,6 +165,9 @@ func (e *elaborator) arguments(f *Function) ([]string, []field.Elem) {
 }
 
 func (e *elaborator) argument(a *Argument, f *Function) field.Elem {
+	if v, ok := e.admArgument(a); ok {
+		return v
+	}
 	name := &Name{node{a.Word.Span()}, a.Word.Text, a.Word.Name()}
 	_, declared := e.symbols[name.Name]
 	switch {

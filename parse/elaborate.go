@@ -197,14 +197,13 @@ func (e *elaborator) lagrangian(s *Statement) {
 		return
 	}
 	e.model.LagrangianSpan = s.At
-	form := s.Lagrangian.Form
-	if form.Text == "covariant" {
+	switch s.Lagrangian.Form.Text {
+	case "covariant":
 		e.model.Covariant = e.covariant(s.Lagrangian.Value.X)
 		return
-	}
-	if form.Text != "quadratic" {
-		panic(newFault(diag.NotYetSupported, form.Span(), fmt.Sprintf("a Lagrangian of the %s form is not yet supported", form.Text),
-			"a quadratic Lagrangian can be reduced: lagrangian quadratic = …"))
+	case "adm":
+		e.model.ADM = e.covariant(s.Lagrangian.Value.X)
+		return
 	}
 	f := e.value(s.Lagrangian.Value.X)
 	for _, t := range f.terms {

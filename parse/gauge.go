@@ -57,12 +57,12 @@ func Perturbations(g Gauge, s Sector, scalars []string) []string {
 	return out
 }
 
-// gauge reads gauge and sector of a covariant model and enters its perturbations, which no
+// gauge reads gauge and sector of a covariant or adm model and enters its perturbations, which no
 // statement declares. Without a statement it is the unitary gauge where there is a scalar
-// field, and else the newtonian one.
+// field or the form is adm, and else the newtonian one.
 func (e *elaborator) gauge() {
 	m := e.model
-	if e.form != "covariant" {
+	if e.quadratic() {
 		return
 	}
 	chosen := false
@@ -70,7 +70,10 @@ func (e *elaborator) gauge() {
 		switch {
 		case e.repeated[s]:
 		case s.Gauge != nil:
-			m.Gauge, m.GaugeSpan, chosen = Gauge(slices.Index(gaugeWords, s.Gauge.Text)), s.Gauge.Span(), true
+			g := Gauge(slices.Index(gaugeWords, s.Gauge.Text))
+			if e.try(func() { e.admGauge(g, s.Gauge.Span()) }) {
+				m.Gauge, m.GaugeSpan, chosen = g, s.Gauge.Span(), true
+			}
 		case s.Sector != nil:
 			m.Sector = Sector(slices.Index(sectorWords, s.Sector.Text))
 		case s.Lagrangian != nil && !chosen:
@@ -78,10 +81,12 @@ func (e *elaborator) gauge() {
 		}
 	}
 	var scalars []string
-	for _, g := range m.Scalars() {
-		scalars = append(scalars, e.k.Info(g).Name)
+	if !e.isADM() {
+		for _, g := range m.Scalars() {
+			scalars = append(scalars, e.k.Info(g).Name)
+		}
 	}
-	if !chosen && len(scalars) == 0 {
+	if !chosen && len(scalars) == 0 && !e.isADM() {
 		m.Gauge = Newtonian
 	}
 	for i, name := range Perturbations(m.Gauge, m.Sector, scalars) {

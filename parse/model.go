@@ -39,6 +39,7 @@ type Model struct {
 
 	Quadratic      []Term // the Lagrangian of the quadratic form
 	Covariant      Tensor // the Lagrangian of the covariant form; nil in the others
+	ADM            Tensor // the Lagrangian of the adm form; nil in the others
 	LagrangianSpan diag.Span
 
 	Gauge     Gauge
@@ -54,8 +55,11 @@ type Model struct {
 }
 
 // Scalars lists the scalar fields of a covariant model: the functions of time that are not
-// part of the metric.
+// part of the metric. In an adm model functions of time are given, and no fields.
 func (m *Model) Scalars() []field.Gen {
+	if m.ADM != nil {
+		return nil
+	}
 	var out []field.Gen
 	for _, b := range m.Background {
 		if b.Name != "a" && b.Name != "H" {

@@ -16,11 +16,11 @@ func (e *elaborator) rest(s *Statement) {
 	switch {
 	case s.Gauge != nil && e.quadratic():
 		panic(newFault(diag.WrongForm, s.At, "a quadratic Lagrangian has no gauge to choose", "gauge belongs to the covariant and adm forms"))
-	case s.Sector != nil && s.Sector.Text != "scalar" && e.form != "covariant":
+	case s.Sector != nil && s.Sector.Text != "scalar" && e.quadratic():
 		panic(newFault(diag.NotYetSupported, s.Sector.Span(), fmt.Sprintf("the %s sector is not yet supported", s.Sector.Text), "sector scalar can be reduced"))
 	case s.Fields != nil && !e.quadratic():
 		panic(newFault(diag.WrongForm, s.At, fmt.Sprintf("the %s form has its own perturbations", e.form), "the gauge chooses among A, B, zeta, E and dphi"))
-	case s.Keep != nil && e.form != "adm":
+	case s.Keep != nil:
 		e.keep(s)
 	case s.Small != nil:
 		e.small(s.Small)

@@ -6,7 +6,7 @@ import (
 	"remnant/expr/field"
 )
 
-// Tensor is a node of a covariant Lagrangian with every name resolved and every index
+// Tensor is a node of a covariant or adm Lagrangian with every name resolved and every index
 // checked: in a product each index letter stands twice, or once and is free; the terms of a
 // sum have the same free indices; the whole is a scalar.
 type Tensor interface{ Expr }
@@ -38,6 +38,13 @@ type (
 	}
 	// TensorCurvature is R, Ric.ab, Riem.abcd, Weyl.abcd or G.ab.
 	TensorCurvature struct {
+		node
+		Name    string
+		Letters string
+	}
+	// TensorSlice is a quantity of the slices of constant time: N, K, K.ij, R3, R3.ij, Vn or
+	// acc.i.
+	TensorSlice struct {
 		node
 		Name    string
 		Letters string

@@ -34,10 +34,13 @@ func (x *expansion) firstOrder() ([]Equation, error) {
 	r := *x.ring
 	r.uniform = true
 	e := x.evaluator(&r, names)
-	l := e.volume.mul(e.scalar(x.m.Covariant))
+	l := e.volume.mul(e.scalar(x.action()))
 	var out []Equation
 	for i, n := range names {
 		out = append(out, Equation{From: n, Value: r.euler(l, i, x.density)})
+	}
+	if x.m.ADM != nil {
+		return out, nil
 	}
 	return out, x.bianchi(out)
 }
@@ -75,7 +78,7 @@ func (x *expansion) solve(eqs []Equation) error {
 		}
 		x.m.Relations = append(x.m.Relations, parse.RelationDecl{Text: "the equation of " + eqs[i].From, Auto: true})
 		number := len(x.m.Relations) - 1
-		eqs[i].Leader, err = x.orient(e, number)
+		eqs[i].Leader, err = x.orient(e, number, eqs)
 		if err != nil {
 			return x.relationError(eqs[i], e, err)
 		}
@@ -86,13 +89,16 @@ func (x *expansion) solve(eqs []Equation) error {
 
 // orient chooses the leader of e = 0 and adds the relation: the first class that holds a
 // jet in which e is linear, else a rate that enters squared.
-func (x *expansion) orient(e field.Elem, number int) (field.Gen, error) {
-	k := x.m.K
+func (x *expansion) orient(e field.Elem, number int, eqs []Equation) (field.Gen, error) {
+	k, rank := x.m.K, x.rank
+	if x.m.ADM != nil {
+		rank = func(g field.Gen) []int { return x.admRank(g, eqs) }
+	}
 	var best field.Gen
 	bestRank := []int(nil)
 	for _, g := range e.Num().Vars() {
-		if rank := x.rank(g); rank != nil && k.CanLead(e, g) && slices.Compare(rank, bestRank) > 0 {
-			best, bestRank = g, rank
+		if r := rank(g); r != nil && k.CanLead(e, g) && slices.Compare(r, bestRank) > 0 {
+			best, bestRank = g, r
 		}
 	}
 	if bestRank != nil {

@@ -33,10 +33,14 @@ func (t tensor) setPair(r quantity, d, c, a, b int) {
 	t.set(r, c, d, b, a)
 }
 
-func (f *frame) riemannComponent(d, c, a, b int) quantity {
+func (f *frame) riemannComponent(d, c, a, b int) quantity { return f.curvatureFrom(0, d, c, a, b) }
+
+// curvatureFrom is a component of the curvature of the frame vectors from the given one on: 0
+// for that of space-time, 1 for that of the slices.
+func (f *frame) curvatureFrom(first, d, c, a, b int) quantity {
 	g := f.connection
 	r := f.e(a, g.at(d, b, c)).sub(f.e(b, g.at(d, a, c)))
-	for s := range 4 {
+	for s := first; s < 4; s++ {
 		part := product(g.at(d, a, s), g.at(s, b, c)).sub(product(g.at(d, b, s), g.at(s, a, c)))
 		// c_ab^s = Γ^s_ab − Γ^s_ba, the connection being without torsion
 		part = part.sub(product(g.at(s, a, b).sub(g.at(s, b, a)), g.at(d, s, c)))

@@ -46,6 +46,8 @@ func (e *evaluator) value(t parse.Tensor) labelled {
 		return plain(e.function(n))
 	case *parse.TensorCurvature:
 		return e.selfTrace(labelled{e.curved(n.Name), n.Letters})
+	case *parse.TensorSlice:
+		return e.slice(n)
 	case *parse.TensorGrad:
 		return e.gradient(n)
 	case *parse.TensorBox:

@@ -1,6 +1,6 @@
 package rules
 
-// The expansion of a covariant model.
+// The expansion of a covariant or adm model.
 
 import (
 	"fmt"
@@ -12,7 +12,7 @@ import (
 	"remnant/parse/diag"
 )
 
-// Expansion is a covariant model at second order.
+// Expansion is a covariant or adm model at second order.
 type Expansion struct {
 	Model     *parse.Model // with the terms of its quadratic form, and the derived relations
 	Equations []Equation   // of the background, in the order in which they were used
@@ -26,7 +26,7 @@ type expansion struct {
 	scalars []field.Gen
 }
 
-// Expand derives the background equations of a covariant model and its quadratic form, in
+// Expand derives the background equations of a covariant or adm model and its quadratic form, in
 // the model's gauge and sector. Refusals are a diag.List; a limit or an interruption is a
 // *budget.Stop.
 func Expand(model *parse.Model) (out *Expansion, err error) {
@@ -95,7 +95,7 @@ func (x *expansion) evaluator(r *ring, names []string) *evaluator {
 
 func (x *expansion) secondOrder(names []string) (quantity, error) {
 	e := x.evaluator(x.ring, names)
-	return e.volume.mul(e.scalar(x.m.Covariant)), nil
+	return e.volume.mul(e.scalar(x.action())), nil
 }
 
 // finish writes the terms of the quadratic form, coefficients reduced by the relations.
@@ -115,7 +115,7 @@ func (x *expansion) finish(l quantity) error {
 
 // checkGauge refuses a gauge that the background does not allow, and records what it needs.
 func (x *expansion) checkGauge() error {
-	if x.m.Sector != parse.ScalarSector {
+	if x.m.Sector != parse.ScalarSector || x.m.ADM != nil {
 		return nil
 	}
 	needs, of := field.Elem{}, ""
