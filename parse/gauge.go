@@ -30,6 +30,15 @@ const (
 	TensorSector
 )
 
+// Polarisations is how many fields each perturbation of the sector stands for: a transverse
+// vector has two, and so has a transverse and traceless tensor.
+func (s Sector) Polarisations() int {
+	if s == ScalarSector {
+		return 1
+	}
+	return 2
+}
+
 // String is the word of the notation.
 func (s Sector) String() string { return sectorWords[s] }
 

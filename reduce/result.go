@@ -19,8 +19,8 @@ type Result struct {
 	Initial          System           // the quadratic form of the Lagrangian
 	Steps            []Step
 	Remaining        System
-	Weights          []int // half the order of each remaining field in the leading matrix
-	DegreesOfFreedom int
+	Weights          []int  // half the order of each remaining field in the leading matrix
+	DegreesOfFreedom int    // polarisations counted
 	Count            Count  // the independent count, which agrees
 	Variable         string // the field that remains; "" if none or several do
 	Requested        string // what the model asked to keep; "" if it did not
@@ -64,8 +64,8 @@ func Reduce(m *parse.Model) (r *Result, err error) {
 		return nil, err
 	}
 	r.Steps, r.Remaining, r.Weights = e.steps, e.now, e.weights
-	r.DegreesOfFreedom = half(e.weights)
-	if r.Count.Gauge != 0 || r.Count.Solutions != 2*r.DegreesOfFreedom {
+	r.DegreesOfFreedom = half(e.weights) * m.Sector.Polarisations()
+	if r.Count.Gauge != 0 || r.Count.Solutions != 2*half(e.weights) {
 		return nil, ErrCount
 	}
 	b.Stage("analysing what remains")

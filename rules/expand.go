@@ -105,6 +105,9 @@ func (x *expansion) finish(l quantity) error {
 		if err != nil {
 			return x.refuse(NoSolution, x.m.LagrangianSpan, fmt.Sprintf("a coefficient of the quadratic action divides by zero: %v", err), "")
 		}
+		if x.m.Sector == parse.TensorSector {
+			c = c.Scale(1, 2) // γ_ijγ_ij is 2γ² for γ_xx = −γ_yy = γ
+		}
 		if t.Coef = c; !c.IsZero() {
 			t.Span = x.m.LagrangianSpan
 			x.m.Quadratic = append(x.m.Quadratic, t)
