@@ -159,6 +159,30 @@ func TestString(t *testing.T) {
 	}
 }
 
+// TestShapeQueries: constants and single terms.
+func TestShapeQueries(t *testing.T) {
+	x := FromVar(1)
+	for _, c := range []struct {
+		p              Poly
+		con, mono, one bool
+	}{
+		{Poly{}, true, false, false},
+		{FromInt(1), true, true, true},
+		{FromInt(-1), true, true, false},
+		{x, false, true, false},
+		{x.Add(FromInt(1)), false, false, false},
+		{FromBig(new(big.Int).Lsh(big.NewInt(1), 90)), true, true, false},
+	} {
+		v, ok := c.p.Const()
+		if c.p.IsConst() != c.con || ok != c.con || c.p.IsMono() != c.mono || c.p.IsOne() != c.one {
+			t.Errorf("%v: constant %v, one term %v, one %v", c.p, c.p.IsConst(), c.p.IsMono(), c.p.IsOne())
+		}
+		if ok && !FromBig(v).Equal(c.p) {
+			t.Errorf("%v has the value %v", c.p, v)
+		}
+	}
+}
+
 // TestMisorderedMonomials: constructors put monomials in order.
 func TestMisorderedMonomials(t *testing.T) {
 	p := FromMono([]Power{{5, 1}, {2, 3}, {9, 0}, {5, 2}})
