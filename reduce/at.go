@@ -16,6 +16,7 @@ import (
 
 	"remnant/expr/budget"
 	"remnant/expr/field"
+	"remnant/expr/oper"
 	"remnant/expr/show"
 	"remnant/parse"
 	"remnant/parse/diag"
@@ -265,9 +266,51 @@ func (p *point) single(s *Single) *Single {
 		Q:       p.list(s.Q),
 		Kinetic: p.optional(s.Kinetic), Gradient: p.optional(s.Gradient), Mass: p.optional(s.Mass),
 		SoundSpeed2: p.optional(s.SoundSpeed2), GrowthInK: s.GrowthInK,
-		EquationOfMotion: p.list(s.EquationOfMotion),
-		ZSquared:         p.optional(s.ZSquared), ZppOverZ: p.optional(s.ZppOverZ),
+		EquationOfMotion: p.motion(s),
+		ZSquared:         p.optional(s.ZSquared), ZppOverZ: p.pump(s),
 	}
+}
+
+// motion divides the coefficients of the equation of motion at the point, so that it does
+// not matter whether the result writes their quotients out.
+func (p *point) motion(s *Single) []field.Elem {
+	if s.EquationOfMotion != nil || len(s.Q) == 0 {
+		return p.list(s.EquationOfMotion)
+	}
+	a := oper.FromNormalForm(s.Q)
+	out := make([]field.Elem, a.Order()+1)
+	for i := range out {
+		out[i] = p.number(a.Coef(i))
+	}
+	lead := out[a.Order()]
+	for i := range out {
+		out[i] = p.quotient(out[i], lead)
+	}
+	return out
+}
+
+// pump is z″/z from z² and its derivatives by dη = (N̄/a)dτ at the point.
+func (p *point) pump(s *Single) *field.Elem {
+	if s.ZppOverZ != nil || s.ZSquared == nil {
+		return p.optional(s.ZppOverZ)
+	}
+	rate := p.r.Model.A.Div(p.r.Model.Lapse)
+	d1 := s.ZSquared.D().Mul(rate)
+	z2, z2p, z2pp := p.number(*s.ZSquared), p.number(d1), p.number(d1.D().Mul(rate))
+	log := p.quotient(z2p, z2)
+	out := p.quotient(z2pp, z2).Scale(1, 2).Sub(log.Mul(log).Scale(1, 4)).Lowest()
+	return &out
+}
+
+// quotient divides numbers; a divisor that vanishes is a fault of the point.
+func (p *point) quotient(a, b field.Elem) field.Elem {
+	if b.IsZero() {
+		if p.fault == nil && len(p.missing) == 0 {
+			p.fault = p.refuse(PointSingular, diag.Span{}, "the result has no value here: its kinetic coefficient vanishes", "another point is expected")
+		}
+		return b
+	}
+	return a.Div(b).Lowest()
 }
 
 func (p *point) several(s *Several) *Several {

@@ -99,3 +99,33 @@ func TestKnownNameNotNeeded(t *testing.T) {
 		t.Error(err)
 	}
 }
+
+// TestValuesOfWhatIsNotWrittenOut takes the equation of motion and z″/z from a result, as a
+// large one lacks them: the values must be the same.
+func TestValuesOfWhatIsNotWrittenOut(t *testing.T) {
+	points := map[string]string{
+		"plover.act":           "a = 3; H = 1/2; eps = 1/5; eps' = 2; eps'' = 7; k = 7",
+		"plover-efolds.act":    "a = 3; H = 1/2; eps = 1/5; eps' = 2; eps'' = 7; k = 7",
+		"gannet.act":           "m = 2; k = 3",
+		"sandpiper.act":        "M = 2; a = 3; H = 1/2; phi' = 1/5; phi'' = 2; phi''' = 7; k = 7",
+		"plover-conformal.act": "a = 3; H = 1/2; eps = 1/5; eps' = 2; eps'' = 7; k = 7",
+	}
+	for name, point := range points {
+		r := mustReduce(t, load(t, name))
+		want, err := r.At(diag.NewSource("point", point))
+		if err != nil {
+			t.Fatal(err)
+		}
+		lacking, one := *r, *r.Single
+		one.EquationOfMotion, one.ZppOverZ = nil, nil
+		lacking.Single = &one
+		got, err := lacking.At(diag.NewSource("point", point))
+		if err != nil {
+			t.Fatal(err)
+		}
+		same(t, name+": z''/z", got.Single.ZppOverZ, *want.Single.ZppOverZ)
+		for i, c := range want.Single.EquationOfMotion {
+			same(t, name+": equation of motion", &got.Single.EquationOfMotion[i], c)
+		}
+	}
+}

@@ -416,6 +416,9 @@ func (f *findings) motion() phrase {
 // motionUnderived is Σ (−1)ⁿ (qₙ u⁽ⁿ⁾)⁽ⁿ⁾ = 0, by the names of the coefficients above it.
 func (f *findings) motionUnderived() phrase {
 	var out phrase
+	if len(f.Single.Q) == 2 {
+		return join("", words("(kinetic "), maths(show.Symbol(f.Variable, 1)), words(")' = "), maths(show.Symbol("q0", 0)), words(" "), maths(show.Symbol(f.Variable, 0)))
+	}
 	for n := len(f.Single.Q) - 1; n >= 0; n-- {
 		sign := " + "
 		switch {
@@ -433,7 +436,7 @@ func (f *findings) motionUnderived() phrase {
 // motionByCoefficients is (𝒦u′)′ = 𝒢∂²u − ℳu in words.
 func (f *findings) motionByCoefficients() phrase {
 	if f.Single.Kinetic == nil {
-		return join("", words("(q₁ "), maths(show.Symbol(f.Variable, 1)), words(")' = q₀ "), maths(show.Symbol(f.Variable, 0)))
+		return f.motionUnderived()
 	}
 	out := join("", words("(kinetic "), maths(show.Symbol(f.Variable, 1)), words(")' = gradient "), maths(show.Spatial(f.Variable, 0, 2)))
 	if !f.Single.Mass.IsZero() {
