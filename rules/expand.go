@@ -24,6 +24,8 @@ type expansion struct {
 	ring    *ring
 	density field.Elem // N̄a³
 	scalars []field.Gen
+
+	curvature field.Elem // in the gauge δR = 0: R on the background
 }
 
 // Expand derives the background equations of a covariant or adm model and its quadratic form, in
@@ -95,6 +97,9 @@ func (x *expansion) evaluator(r *ring, names []string) *evaluator {
 
 func (x *expansion) secondOrder(names []string) (quantity, error) {
 	e := x.evaluator(x.ring, names)
+	if x.curvatureGauge() {
+		return x.uniformCurvature(e, len(names))
+	}
 	return e.volume.mul(e.scalar(x.action())), nil
 }
 
@@ -124,6 +129,10 @@ func (x *expansion) checkGauge() error {
 	needs, of := field.Elem{}, ""
 	switch x.m.Gauge {
 	case parse.Unitary:
+		if x.curvatureGauge() {
+			needs, of = x.curvature.D(), "R'"
+			break
+		}
 		if len(x.scalars) == 0 {
 			return x.refuse(IncompleteGauge, x.m.GaugeSpan, "the unitary gauge needs a scalar to set to zero, and the model has none", "gauge newtonian is complete on every background")
 		}
