@@ -5,6 +5,7 @@ package reduce
 import (
 	"remnant/expr/field"
 	"remnant/expr/oper"
+	"remnant/rules"
 )
 
 // Frame2 is (a/N̄)², which takes a ratio of coefficients to the conformal clock.
@@ -30,7 +31,7 @@ func (r *Result) DefinitionSum() []Addend {
 	}
 	var out []Addend
 	for _, t := range m.Keep.Definition {
-		c := t.Coef.Mul(fourier(m.Wavenumber, t.U.Space, 0))
+		c := t.Coef.Mul(rules.Fourier(m.Wavenumber, t.U.Space, 0))
 		out = append(out, Addend{oper.Mono(c, t.U.Time), m.Fields[t.U.Field].Name})
 	}
 	return out

@@ -15,6 +15,7 @@ import (
 	"remnant/expr/field"
 	"remnant/expr/oper"
 	"remnant/parse"
+	"remnant/rules"
 )
 
 // exchange keeps the defined variable u of the model in place of the one field that the
@@ -58,7 +59,7 @@ func exchange(m *parse.Model, free *elimination) bool {
 func definedAs(m *parse.Model, free *elimination, x string) oper.Oper {
 	var u oper.Oper
 	for _, t := range m.Keep.Definition {
-		op := oper.Mono(t.Coef.Mul(fourier(m.Wavenumber, t.U.Space, 0)), t.U.Time)
+		op := oper.Mono(t.Coef.Mul(rules.Fourier(m.Wavenumber, t.U.Space, 0)), t.U.Time)
 		for _, a := range Express(m.K, free.steps, m.Fields[t.U.Field].Name) {
 			if a.Name == x {
 				u = u.Add(op.Mul(a.Coef))

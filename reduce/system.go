@@ -6,6 +6,7 @@ import (
 	"remnant/expr/field"
 	"remnant/expr/oper"
 	"remnant/parse"
+	"remnant/rules"
 )
 
 // System is a quadratic form: 𝒟 = 𝒟† over K[D], with the names of the fields Φ.
@@ -65,34 +66,13 @@ func mapForm(m oper.MatrixNormalForm, fn func(field.Elem) (field.Elem, error)) (
 	return out, err
 }
 
-// Quadratic writes the model's Lagrangian as a quadratic form. A term c·DᵗU·DˢV, with p and
-// q spatial derivatives, is i^p(−i)^q k^(p+q) = (−1)^((p−q)/2) k^(p+q) times as much for one
-// Fourier mode; with B_UV = (−D)ᵗ c Dˢ the form is 𝒟 = B + B†, so that S = ½∫Φᵀ𝒟Φ.
+// Quadratic writes the model's Lagrangian as a quadratic form; rules.Form says how.
 func Quadratic(m *parse.Model) System {
-	s := System{K: m.K, D: oper.NewMatrix(len(m.Fields), len(m.Fields))}
+	s := System{K: m.K, D: rules.Form(m, m.Quadratic, len(m.Fields))}
 	for _, f := range m.Fields {
 		s.Names = append(s.Names, f.Name)
 	}
-	b := oper.NewMatrix(len(m.Fields), len(m.Fields))
-	for _, t := range m.Quadratic {
-		c := t.Coef.Mul(fourier(m.Wavenumber, t.U.Space, t.V.Space))
-		op := oper.Mono(c, t.V.Time)
-		for range t.U.Time {
-			op = op.D().Neg()
-		}
-		b.Set(t.U.Field, t.V.Field, b.At(t.U.Field, t.V.Field).Add(op))
-		m.K.Budget().Check(op.Terms())
-	}
-	s.D = b.Add(b.Adjoint())
 	return s
-}
-
-func fourier(k field.Elem, p, q int) field.Elem {
-	c := k.Pow(p + q)
-	if (p-q)/2%2 != 0 {
-		c = c.Neg()
-	}
-	return c
 }
 
 // index is the place of the field called name; −1 if there is none.
@@ -137,7 +117,7 @@ func (s System) define(u, multiplier string, terms []parse.LinearTerm, k field.E
 	row := make([]oper.Oper, n+1)
 	row[n] = oper.New(s.K.Int(1))
 	for _, t := range terms {
-		c := t.Coef.Mul(fourier(k, t.U.Space, 0)).Neg()
+		c := t.Coef.Mul(rules.Fourier(k, t.U.Space, 0)).Neg()
 		row[t.U.Field] = row[t.U.Field].Add(oper.Mono(c, t.U.Time))
 	}
 	for j, a := range row {

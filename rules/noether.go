@@ -1,0 +1,94 @@
+package rules
+
+// The Noether check. An action that is a scalar does not change under a change of
+// coordinates, so before any gauge is fixed 𝒟·G = 0 modulo the background equations, for the
+// linearised change G of every perturbation (the second Noether identity). It tests the whole
+// expansion: geometry, background equations and quadratic form.
+
+import (
+	"remnant/expr/field"
+	"remnant/expr/oper"
+	"remnant/parse"
+)
+
+// GaugeIdentity is the check for one direction of the coordinates.
+type GaugeIdentity struct {
+	Parameter string      // T of τ → τ + T, L of xⁱ → xⁱ + ∂ᵢL, or the transverse V of xⁱ → xⁱ + Vⁱ
+	Fields    []string    // the perturbations, in the order of the rows
+	Left      []oper.Oper // what is left of each row of 𝒟·G; all zero if the identity holds
+}
+
+// Holds reports whether the identity holds.
+func (g GaugeIdentity) Holds() bool {
+	for _, a := range g.Left {
+		if !a.IsZero() {
+			return false
+		}
+	}
+	return true
+}
+
+// CheckGauge expands a covariant model without fixing the gauge, in its sector, and checks
+// the identity of each direction. Tensors do not change under linearised changes of
+// coordinates; for them there is nothing to check, and the list is empty.
+func CheckGauge(m *parse.Model) ([]GaugeIdentity, error) {
+	open := *m
+	open.Gauge, open.Fields = parse.Open, nil
+	var names, scalars []string
+	for _, s := range m.Scalars() {
+		scalars = append(scalars, m.K.Info(s).Name)
+	}
+	for _, n := range parse.Perturbations(parse.Open, m.Sector, scalars) {
+		open.Fields = append(open.Fields, parse.FieldDecl{Name: n})
+		names = append(names, n)
+	}
+	x, err := Expand(&open)
+	if err != nil {
+		return nil, err
+	}
+	d := Form(x.Model, x.Model.Quadratic, len(names))
+	var out []GaugeIdentity
+	for _, g := range generators(m) {
+		id := GaugeIdentity{Parameter: g.parameter, Fields: names}
+		for i := range names {
+			var sum oper.Oper
+			for j, n := range names {
+				sum = sum.Add(d.At(i, j).Mul(g.change[n]))
+			}
+			id.Left = append(id.Left, sum.Map(field.Elem.Lowest))
+		}
+		out = append(out, id)
+	}
+	return out, nil
+}
+
+// generator is the change of each perturbation, acting on a parameter.
+type generator struct {
+	parameter string
+	change    map[string]oper.Oper
+}
+
+// generators are, with g → g + £_ξ g and the conventions of the perturbations,
+//
+//	ξ = (T, ∂ᵢL): δA = T′ + (N̄′/N̄)T, δB = a²L′ − N̄²T, δζ = (a′/a)T, δE = L, δφ = φ′T;
+//	ξ = (0, Vᵢ):  δS = a²V′, δW = V.
+func generators(m *parse.Model) []generator {
+	one := m.K.Int(1)
+	a2, n := m.A.Mul(m.A), m.Lapse
+	switch m.Sector {
+	case parse.VectorSector:
+		return []generator{{"V", map[string]oper.Oper{"S": oper.Mono(a2, 1), "W": oper.New(one)}}}
+	case parse.TensorSector:
+		return nil
+	}
+	time := map[string]oper.Oper{
+		"A":    oper.New(n.D().Div(n), one),
+		"B":    oper.New(n.Mul(n).Neg()),
+		"zeta": oper.New(m.A.D().Div(m.A)),
+	}
+	for _, s := range m.Scalars() {
+		time["d"+m.K.Info(s).Name] = oper.New(m.K.Jet(s, 1))
+	}
+	space := map[string]oper.Oper{"B": oper.Mono(a2, 1), "E": oper.New(one)}
+	return []generator{{"T", time}, {"L", space}}
+}
