@@ -4,6 +4,7 @@ package main
 
 import (
 	"fmt"
+	"math/big"
 	"path/filepath"
 	"slices"
 	"strings"
@@ -119,14 +120,27 @@ func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int
 	default:
 		r.note = join("", words("from the "), maths(show.Symbol(sol.Equation, 0)), words(" equation"))
 	}
-	var needs []phrase
-	for _, x := range st.Nonzero {
-		needs = append(needs, compare(show.Elem(x), unequal, show.Int(0)))
-	}
-	if len(needs) > 0 {
-		r.note = join(", needs ", r.note, list(needs))
+	if n := needs(st.Nonzero); len(n) > 0 {
+		r.note = join(", needs ", r.note, n)
 	}
 	return r
+}
+
+// needs lists factors that a step divides by; long ones stand at the head of the page.
+func needs(factors []field.Elem) phrase {
+	var list []phrase
+	long := false
+	for _, x := range factors {
+		if x.Terms() > longCondition {
+			long = true
+			continue
+		}
+		list = append(list, compare(show.Elem(x), unequal, show.Int(0)))
+	}
+	if long {
+		list = append(list, words("a longer factor assumed above"))
+	}
+	return join(", ", list...)
 }
 
 // actionBlock is the action of a system.
@@ -179,6 +193,8 @@ func (f *findings) remains() *section {
 	switch {
 	case len(names) == 0:
 		s.blocks = append(s.blocks, block{sentence: words("All fields are fixed by the constraints, and the action that is left is zero.")})
+	case f.Single != nil && f.Single.Kinetic != nil && f.long(f.Single.Q...):
+		s.blocks = append(s.blocks, f.actionByCoefficients())
 	default:
 		s.blocks = append(s.blocks, f.actionBlock(f.Remaining))
 	}
@@ -188,7 +204,7 @@ func (f *findings) remains() *section {
 	if f.Single != nil {
 		rows, short := f.equations()
 		s.blocks = append(s.blocks, block{rows: rows})
-		if short {
+		if short || f.Single.Kinetic != nil && f.long(f.Single.Q...) {
 			s.blocks = append(s.blocks, block{sentence: words("Long expressions are given by others on this page; --full writes them out.")})
 		}
 	}
@@ -205,6 +221,19 @@ func (f *findings) names() []row {
 		rows = append(rows, row{label: words("asked for"), value: compare(show.Symbol(f.Requested, 0), equals, reduce.SumNode(sum))})
 	}
 	return rows
+}
+
+// actionByCoefficients is the action by the names of the coefficients below it, for one
+// Fourier mode.
+func (f *findings) actionByCoefficients() block {
+	u := func(n int) show.Node { return show.Power(show.Symbol(f.Variable, n), 2) }
+	slow := show.Product(show.Symbol("gradient", 0), wave(2))
+	if !f.Single.Mass.IsZero() {
+		slow = show.Sum(slow, show.Symbol("mass", 0))
+	}
+	twice := show.Sum(show.Product(show.Symbol("kinetic", 0), u(1)), show.Neg(show.Product(slow, u(0))))
+	return block{display: show.Equation(show.Symbol("S", 0),
+		show.Integral(clockName(f.Model.Clock), show.Product(show.Rat(big.NewRat(1, 2)), show.Bracket(twice))))}
 }
 
 // quantities are the rows of what the action is made of, stability beside it.

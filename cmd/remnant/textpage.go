@@ -122,9 +122,7 @@ func (w *textWriter) row(r row, label string, at, noteAt int) {
 	}
 	w.line(columns(start), value, at)
 	if note != "" {
-		for _, l := range wrapWords(note, room-indentWidth) {
-			w.line(0, l, at+indentWidth)
-		}
+		w.line(0, w.value(r.note, room-indentWidth), at+indentWidth)
 	}
 }
 
@@ -236,11 +234,11 @@ func wrapWords(text string, width int) []string {
 		case columns(line)+1+columns(word) <= width:
 			line += " " + word
 		default:
-			lines = append(lines, line)
+			lines = append(lines, strings.TrimRight(line, " "))
 			line = word
 		}
 	}
-	return append(lines, line)
+	return append(lines, strings.TrimRight(line, " "))
 }
 
 // columns counts the columns of a text; marks that stand on a letter take none.
