@@ -103,3 +103,24 @@ func (e *elaborator) gauge() {
 		e.enter(&symbol{name: name, kind: symbolField, index: i})
 	}
 }
+
+// Variant is the model in another gauge and sector, over the same field K: what it keeps
+// stays where the variant has that perturbation.
+func (m *Model) Variant(g Gauge, s Sector) *Model {
+	out := *m
+	out.Gauge, out.Sector, out.Fields, out.Keep = g, s, nil, nil
+	var scalars []string
+	for _, x := range m.Scalars() {
+		scalars = append(scalars, m.K.Info(x).Name)
+	}
+	for i, name := range Perturbations(g, s, scalars) {
+		out.Fields = append(out.Fields, FieldDecl{Name: name})
+		if m.Keep != nil && m.Keep.Name == name && m.Keep.Definition == nil {
+			out.Keep = &Keep{Name: name, Span: m.Keep.Span, Field: i}
+		}
+	}
+	if g == m.Gauge && s == m.Sector {
+		out.Keep = m.Keep
+	}
+	return &out
+}

@@ -36,12 +36,29 @@ var ErrCount = errors.New("the independent count of solutions disagrees with the
 
 // Reduce takes the model's action to what remains of it. Refusals are a diag.List; a limit
 // or an interruption is a *budget.Stop.
-func Reduce(m *parse.Model) (r *Result, err error) {
+func Reduce(m *parse.Model) (*Result, error) { return reduceBy(new(rules.Expander), m) }
+
+// Sectors reduces a covariant or adm model in its scalar, vector and tensor sectors; what
+// they share is found once.
+func Sectors(m *parse.Model) ([]*Result, error) {
+	var out []*Result
+	x := new(rules.Expander)
+	for _, s := range []parse.Sector{parse.ScalarSector, parse.VectorSector, parse.TensorSector} {
+		r, err := reduceBy(x, m.Variant(m.Gauge, s))
+		if err != nil {
+			return nil, err
+		}
+		out = append(out, r)
+	}
+	return out, nil
+}
+
+func reduceBy(expander *rules.Expander, m *parse.Model) (r *Result, err error) {
 	defer budget.Catch(&err)
 	b := m.K.Budget()
 	var background []rules.Equation
 	if m.Covariant != nil || m.ADM != nil {
-		x, err := rules.Expand(m)
+		x, err := expander.Expand(m)
 		if err != nil {
 			return nil, err
 		}

@@ -76,6 +76,9 @@ func (x *expansion) solve(eqs []Equation) error {
 		if e.IsZero() {
 			continue
 		}
+		if len(e.Vanishable()) == 0 { // it cannot vanish
+			return x.noSolution(eqs[i], e)
+		}
 		x.m.Relations = append(x.m.Relations, parse.RelationDecl{Text: "the equation of " + eqs[i].From, Auto: true})
 		number := len(x.m.Relations) - 1
 		eqs[i].Leader, err = x.orient(e, number, eqs)

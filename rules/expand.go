@@ -28,10 +28,20 @@ type expansion struct {
 	curvature field.Elem // in the gauge δR = 0: R on the background
 }
 
-// Expand derives the background equations of a covariant or adm model and its quadratic form, in
-// the model's gauge and sector. Refusals are a diag.List; a limit or an interruption is a
-// *budget.Stop.
-func Expand(model *parse.Model) (out *Expansion, err error) {
+// Expander expands variants of one model, in other gauges and sectors; what they share, the
+// background equations and the relations solved from them, is found once.
+type Expander struct {
+	equations []Equation
+	relations []parse.RelationDecl
+}
+
+// Expand expands a model that no variant is asked of.
+func Expand(m *parse.Model) (*Expansion, error) { return new(Expander).Expand(m) }
+
+// Expand derives the background equations of a covariant or adm model and its quadratic form,
+// in the model's gauge and sector. Refusals are a diag.List; a limit or an interruption is a
+// *budget.Stop. Models that one expander is given share their field K.
+func (s *Expander) Expand(model *parse.Model) (out *Expansion, err error) {
 	defer budget.Catch(&err)
 	defer catchRefusal(&err)
 	m := *model
@@ -41,10 +51,12 @@ func Expand(model *parse.Model) (out *Expansion, err error) {
 	x.density = m.Lapse.Mul(m.A.Pow(3))
 	x.scalars = m.Scalars()
 	b := m.K.Budget()
-	b.Stage("deriving the background equations")
-	eqs, err := x.firstOrder()
-	if err != nil {
-		return nil, err
+	var eqs []Equation
+	if s.equations == nil {
+		b.Stage("deriving the background equations")
+		if eqs, err = x.firstOrder(); err != nil {
+			return nil, err
+		}
 	}
 	b.Stage("expanding the action to second order")
 	var names []string
@@ -55,9 +67,13 @@ func Expand(model *parse.Model) (out *Expansion, err error) {
 	if err != nil {
 		return nil, err
 	}
-	if err := x.solve(eqs); err != nil {
-		return nil, err
+	if s.equations == nil {
+		if err := x.solve(eqs); err != nil {
+			return nil, err
+		}
+		s.equations, s.relations = eqs, m.Relations
 	}
+	m.Relations = s.relations
 	if err := x.checkGauge(); err != nil {
 		return nil, err
 	}
@@ -65,7 +81,7 @@ func Expand(model *parse.Model) (out *Expansion, err error) {
 	if err := x.finish(l); err != nil {
 		return nil, err
 	}
-	return &Expansion{Model: &m, Equations: eqs}, nil
+	return &Expansion{Model: &m, Equations: s.equations}, nil
 }
 
 // catchRefusal turns a refusal that was raised deep in an evaluation into the error.

@@ -31,18 +31,16 @@ func (g GaugeIdentity) Holds() bool {
 // CheckGauge expands a covariant model without fixing the gauge, in its sector, and checks
 // the identity of each direction. Tensors do not change under linearised changes of
 // coordinates; for them there is nothing to check, and the list is empty.
-func CheckGauge(m *parse.Model) ([]GaugeIdentity, error) {
-	open := *m
-	open.Gauge, open.Fields = parse.Open, nil
-	var names, scalars []string
-	for _, s := range m.Scalars() {
-		scalars = append(scalars, m.K.Info(s).Name)
+func CheckGauge(m *parse.Model) ([]GaugeIdentity, error) { return new(Expander).CheckGauge(m) }
+
+// CheckGauge is the check beside other expansions of the model.
+func (s *Expander) CheckGauge(m *parse.Model) ([]GaugeIdentity, error) {
+	open := m.Variant(parse.Open, m.Sector)
+	var names []string
+	for _, f := range open.Fields {
+		names = append(names, f.Name)
 	}
-	for _, n := range parse.Perturbations(parse.Open, m.Sector, scalars) {
-		open.Fields = append(open.Fields, parse.FieldDecl{Name: n})
-		names = append(names, n)
-	}
-	x, err := Expand(&open)
+	x, err := s.Expand(open)
 	if err != nil {
 		return nil, err
 	}
