@@ -100,37 +100,46 @@ func (f *frame) sliceRicci() tensor {
 }
 
 // admRank orders what may lead among the background equations of an adm model: functions of
-// time that enter them undifferentiated come before H⁽ⁿ⁾, and the rest is as elsewhere. In the
-// effective theory of inflation these are Λ(t) and c(t) (Cheung et al. 2008, arXiv:0709.0293).
+// time that enter them undifferentiated, then functions of time and of the slices, by less
+// derivatives first, and then H⁽ⁿ⁾ and the rest as elsewhere. What depends on time by itself can be
+// chosen for any history H(t); in the effective theory of inflation these are Λ(t) and c(t)
+// (Cheung et al. 2008, arXiv:0709.0293), for a general L(t, N, K) they are L and L,N.
 func (x *expansion) admRank(g field.Gen, eqs []Equation) []int {
 	in := x.m.K.Info(g)
-	plain := in.Kind == field.Function && in.Order == 0 && in.Name != "a" && in.Name != "H" && in.Name != "t" ||
-		in.Kind == field.FreeFunction && x.ofTime(in)
-	if !plain || x.moves(g, eqs) {
-		return x.rank(g)
-	}
-	return []int{6, 0, -int(g)}
-}
-
-// ofTime reports whether a jet is an undifferentiated function of time alone.
-func (x *expansion) ofTime(in field.Info) bool {
-	moving := false
-	for i, arg := range in.Fn.Args {
-		if in.Index[i] > 0 || onSlices(in.Fn.ArgNames[i]) {
-			return false
+	switch {
+	case in.Kind == field.Function && in.Order == 0 && in.Name != "a" && in.Name != "H" && in.Name != "t":
+		if !x.moves(g, eqs) {
+			return []int{7, 0, -int(g)}
 		}
-		moving = moving || !arg.D().IsZero()
+	case in.Kind == field.FreeFunction:
+		total, sliced, timely := onSlices(in)
+		switch {
+		case timely && !sliced && total == 0 && !x.moves(g, eqs):
+			return []int{7, 0, -int(g)}
+		case timely && sliced && total <= 1:
+			return []int{6, -total, -int(g)}
+		}
 	}
-	return moving
+	return x.rank(g)
 }
 
-// onSlices reports whether an argument of a function is a quantity of the slices.
-func onSlices(argument string) bool {
-	switch argument {
-	case "N", "K", "R3", "Vn":
-		return true
+// onSlices counts the derivatives of a jet by quantities of the slices, and says whether its
+// function depends on such, and whether it depends on time beside them and is not
+// differentiated by it.
+func onSlices(in field.Info) (total int, sliced, timely bool) {
+	for i, arg := range in.Fn.Args {
+		switch in.Fn.ArgNames[i] {
+		case "N", "K", "R3", "Vn":
+			sliced = true
+			total += in.Index[i]
+		default:
+			if in.Index[i] > 0 {
+				return 0, sliced, false
+			}
+			timely = timely || !arg.D().IsZero()
+		}
 	}
-	return false
+	return total, sliced, timely
 }
 
 // moves reports whether a derivative of a function of time stands in the equations as derived.
