@@ -125,14 +125,15 @@ func (f *Field) workIn(p posted) ([]posted, error) {
 	}
 	rest = rest.Lowest()
 	n, assumed := f.squareFreeUnknown(rest)
-	if n.IsConst() || !f.holdsJet(n) {
+	asked := p.hasLead && f.canLead(p.leader, n) // also a constant, where one is asked for
+	if n.IsConst() || !f.holdsJet(n) && !asked {
 		follows := rest
 		if !n.IsConst() {
 			follows = Elem{f: f, num: n}
 		}
 		return nil, &Contradiction{Sources: sources, Follows: follows, Assumed: assumed}
 	}
-	leader, ok := p.leader, p.hasLead && f.canLead(p.leader, n)
+	leader, ok := p.leader, asked
 	if !ok {
 		if leader, ok = f.chooseLeader(n); !ok {
 			return nil, &Unsolvable{Sources: sources, Rest: Elem{f: f, num: n}}
