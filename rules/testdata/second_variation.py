@@ -425,7 +425,7 @@ def phalarope(geo, c, f):
 
 
 def stilt(geo, c, f):
-    return c["M"] ** 2 * geo.R / 2 - c["Lambda"] + c["beta"] * geo.R * geo.R + c["gamma"] * geo.weyl_squared()
+    return c["M"] ** 2 * geo.R / 2 - c["Lambda"] + c["alpha"] * geo.R * geo.R + c["beta"] * geo.weyl_squared()
 
 
 def tern(geo, c, f):
