@@ -10,6 +10,7 @@ import (
 	"os"
 	"strings"
 
+	"remnant/expr/budget"
 	"remnant/parse/diag"
 )
 
@@ -20,11 +21,7 @@ const maxInput = 64 << 20
 // readSource reads a file whole; "-" is standard input.
 func readSource(std streams, path string) (*diag.Source, error) {
 	if path == "-" {
-		text, err := io.ReadAll(io.LimitReader(std.in, maxInput))
-		if err != nil {
-			return nil, &refusal{"cannot read standard input: " + reason(err), ""}
-		}
-		return diag.NewSource("standard input", string(text)), nil
+		return readStandardInput(std)
 	}
 	info, err := os.Stat(path)
 	if err == nil && info.IsDir() {
@@ -38,6 +35,26 @@ func readSource(std streams, path string) (*diag.Source, error) {
 		return nil, &refusal{fmt.Sprintf("cannot read %s: %s", path, reason(err)), ""}
 	}
 	return diag.NewSource(path, string(text)), nil
+}
+
+// readStandardInput reads to the end, which may never come: an interrupt ends it too.
+func readStandardInput(std streams) (*diag.Source, error) {
+	var text []byte
+	var err error
+	read := make(chan struct{})
+	go func() {
+		defer close(read)
+		text, err = io.ReadAll(io.LimitReader(std.in, maxInput))
+	}()
+	select {
+	case <-std.stop:
+		return nil, &budget.Stop{Stage: "reading standard input", Reason: budget.Interrupted, Cause: errInterrupted}
+	case <-read:
+	}
+	if err != nil {
+		return nil, &refusal{"cannot read standard input: " + reason(err), ""}
+	}
+	return diag.NewSource("standard input", string(text)), nil
 }
 
 func readBounded(path string) ([]byte, error) {

@@ -26,15 +26,16 @@ const (
 	statusInternal = 70 // a fault of the program
 )
 
-// streams are what a command reads and writes.
+// streams are what a command reads and writes, and the end of the run.
 type streams struct {
-	in  io.Reader
-	out io.Writer
-	err io.Writer
+	in   io.Reader
+	out  io.Writer
+	err  io.Writer
+	stop <-chan struct{} // closed by an interrupt; nil: never
 }
 
 func main() {
-	os.Exit(run(os.Args[1:], streams{os.Stdin, os.Stdout, os.Stderr}))
+	os.Exit(run(os.Args[1:], streams{in: os.Stdin, out: os.Stdout, err: os.Stderr}))
 }
 
 // run executes one command line and returns its exit status.
@@ -49,6 +50,7 @@ func run(args []string, std streams) (status int) {
 	}()
 	ctx, stop := interruptible()
 	defer stop()
+	std.stop = ctx.Done()
 	root := newRoot(std)
 	root.SetArgs(args)
 	return report(std.err, root.ExecuteContext(ctx))

@@ -25,7 +25,7 @@ func readFile(t *testing.T, name string) string {
 func TestReadmeShowsThePage(t *testing.T) {
 	var out, errs bytes.Buffer
 	path := filepath.Join("..", "..", "testdata", "plover.act")
-	if got := run([]string{"reduce", path}, streams{strings.NewReader(""), &out, &errs}); got != statusDone {
+	if got := run([]string{"reduce", path}, streams{in: strings.NewReader(""), out: &out, err: &errs}); got != statusDone {
 		t.Fatalf("exit status %d: %s", got, errs.String())
 	}
 	if !strings.Contains(readFile(t, "README.md"), "```\n"+out.String()+"```\n") {

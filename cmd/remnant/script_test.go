@@ -110,6 +110,9 @@ func interrupt(ts *testscript.TestScript, neg bool, args []string) {
 	cmd.Dir = ts.MkAbs(".")
 	var stderr, stdout bytes.Buffer
 	cmd.Stderr, cmd.Stdout = &stderr, &stdout
+	input, err := cmd.StdinPipe() // open as long as the command runs
+	ts.Check(err)
+	defer input.Close()
 	ts.Check(cmd.Start())
 	time.Sleep(time.Second)
 	ts.Check(cmd.Process.Signal(os.Interrupt))
@@ -180,7 +183,7 @@ func TestScriptsAreRead(t *testing.T) {
 // TestInternalFault makes the program fail inside, by a writer that panics.
 func TestInternalFault(t *testing.T) {
 	var stderr bytes.Buffer
-	got := run([]string{"version"}, streams{strings.NewReader(""), panicking{}, &stderr})
+	got := run([]string{"version"}, streams{in: strings.NewReader(""), out: panicking{}, err: &stderr})
 	if got != statusInternal {
 		t.Errorf("exit status %d, want %d", got, statusInternal)
 	}
@@ -196,7 +199,7 @@ func (panicking) Write([]byte) (int, error) { panic("out of ink") }
 // TestBrokenOutput reports a standard output that cannot be written.
 func TestBrokenOutput(t *testing.T) {
 	var stderr bytes.Buffer
-	got := run([]string{"version"}, streams{strings.NewReader(""), failing{}, &stderr})
+	got := run([]string{"version"}, streams{in: strings.NewReader(""), out: failing{}, err: &stderr})
 	if got != statusRefused || !strings.Contains(stderr.String(), "cannot write to standard output: "+io.ErrShortWrite.Error()) {
 		t.Errorf("exit status %d, standard error: %s", got, stderr.String())
 	}
