@@ -35,8 +35,9 @@ type Single struct {
 // Sizes, in terms, up to which derivatives of coefficients are written out. Each derivative
 // of a coefficient of a general theory multiplies its size by ten and more.
 const (
-	motionBelow = 150 // for the equation of motion
-	pumpBelow   = 60  // for z″/z, which holds second derivatives
+	motionBelow = 150 // of the leading coefficient, for the equation of motion
+	pumpBelow   = 60  // of z², for z″/z, which holds second derivatives
+	slopeBelow  = 500 // of (z²)′, for the same
 )
 
 func analyseSingle(m *parse.Model, d System) (*Single, error) {
@@ -87,6 +88,9 @@ func (s *Single) secondOrder(m *parse.Model) {
 	}
 	dEta := func(e field.Elem) field.Elem { return e.D().Mul(m.A).Div(m.Lapse) }
 	d1 := dEta(z2)
+	if d1.Terms() > slopeBelow {
+		return
+	}
 	log := d1.Div(z2)
 	zpp := dEta(d1).Div(z2).Scale(1, 2).Sub(log.Mul(log).Scale(1, 4)).Lowest()
 	s.ZppOverZ = &zpp
