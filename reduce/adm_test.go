@@ -150,6 +150,35 @@ keep zeta
 	})
 }
 
+// F(t, N, K) = f(t)N²K³, once as a free function and once written out: the jets of F along the
+// background are those of the product at N = 1, K = 3H.
+func TestFunctionOfLapseAndCurvature(t *testing.T) {
+	const rest = "lagrangian adm = M^2/2*(R3 + K.ij*K.ij - K^2) - V + c/N^2 + "
+	const header = "constants M > 0\nbackground a, V, c"
+	free := mustReduce(t, model(t, "test.act", header+"\nfunctions F(t, N, K)\n"+rest+"F\nkeep zeta\n"))
+	product := mustReduce(t, model(t, "test.act", header+", f\n"+rest+"f*N^2*K^3\nkeep zeta\n"))
+	m := product.Model
+	f, k := eval(t, m, "f"), eval(t, m, "3*H")
+	sameOperators(t, product, free, pointOf(m), func(g field.Gen) uint64 {
+		in := free.Model.K.Info(g)
+		if in.Kind != field.FreeFunction {
+			return pointOf(free.Model)(g)
+		}
+		e := f.Dn(in.Index[0])
+		for n := range in.Index[1] {
+			e = e.Scale(int64(2-n), 1)
+		}
+		for n := range in.Index[2] {
+			e = e.Scale(int64(3-n), 1)
+		}
+		v, ok := e.Mul(k.Pow(3-min(in.Index[2], 3))).EvalMod(poly.Mersenne61, pointOf(m))
+		if !ok {
+			t.Fatal("the point is singular")
+		}
+		return v
+	})
+}
+
 // General relativity with a canonical field: in the unitary gauge X = φ′²/(2N̄²N²), and
 // R = R3 + K_ijK^ij − K² up to a total derivative, in every sector and on every clock.
 func TestCanonicalInBothForms(t *testing.T) {
