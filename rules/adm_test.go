@@ -151,6 +151,24 @@ func TestBackgroundOfGeneralLagrangian(t *testing.T) {
 	}
 }
 
+// The quadratic form of an adm action is invariant under changes of the coordinates on the
+// slices: the Noether identities of ∂ᵢL and Vᵢ hold, for every quantity of the notation at once.
+func TestNoetherOfADM(t *testing.T) {
+	const text = `background a, b
+functions F(t, N, K, R3, Vn)
+lagrangian adm = F + b*K.ij*K.jl*K.li + N*R3.ij*K.ij + R3.ij*R3.ij + acc.i*acc.i*K + K.ij*acc.i*acc.j - Vn*sqrt(K)
+`
+	for _, header := range []string{"clock cosmic\n", "clock conformal\n", "clock efolds\n", "sector vector\n"} {
+		ids, err := CheckGauge(load(t, header+text))
+		if err != nil {
+			t.Fatal(err)
+		}
+		if len(ids) != 1 || !ids[0].Holds() {
+			t.Errorf("%s: identities %+v, want one that holds", header, ids)
+		}
+	}
+}
+
 // What the background equations are solved for, in order.
 func TestLeadersOfADM(t *testing.T) {
 	tests := []struct {

@@ -28,7 +28,7 @@ func (g GaugeIdentity) Holds() bool {
 	return true
 }
 
-// CheckGauge expands a covariant model without fixing the gauge, in its sector, and checks
+// CheckGauge expands a covariant or adm model without fixing the gauge, in its sector, and checks
 // the identity of each direction. Tensors do not change under linearised changes of
 // coordinates; for them there is nothing to check, and the list is empty.
 func CheckGauge(m *parse.Model) ([]GaugeIdentity, error) { return new(Expander).CheckGauge(m) }
@@ -70,6 +70,8 @@ type generator struct {
 //
 //	ξ = (T, ∂ᵢL): δA = T′ + (N̄′/N̄)T, δB = a²L′ − N̄²T, δζ = (a′/a)T, δE = L, δφ = φ′T;
 //	ξ = (0, Vᵢ):  δS = a²V′, δW = V.
+//
+// An action of the adm form has the second and the third alone: its slices are fixed.
 func generators(m *parse.Model) []generator {
 	one := m.K.Int(1)
 	a2, n := m.A.Mul(m.A), m.Lapse
@@ -88,5 +90,8 @@ func generators(m *parse.Model) []generator {
 		time["d"+m.K.Info(s).Name] = oper.New(m.K.Jet(s, 1))
 	}
 	space := map[string]oper.Oper{"B": oper.Mono(a2, 1), "E": oper.New(one)}
+	if m.ADM != nil {
+		return []generator{{"L", space}}
+	}
 	return []generator{{"T", time}, {"L", space}}
 }
