@@ -1,0 +1,159 @@
+package reduce
+
+// A model before anything is eliminated: its background equations and its Lagrangian at
+// second order. The Lagrangian is not the expansion term by term but its shortest equivalent
+// up to total derivatives, which the matrix 𝒟 fixes: the two orders of a product differ by at
+// most one, and no coefficient is differentiated where that can be avoided.
+
+import (
+	"cmp"
+	"slices"
+
+	"remnant/expr/budget"
+	"remnant/expr/field"
+	"remnant/expr/show"
+	"remnant/parse"
+	"remnant/rules"
+)
+
+// Expanded is a model at second order. It is not changed after it was made.
+type Expanded struct {
+	Model       *parse.Model     // with the relations that its background equations gave
+	Background  []rules.Equation // as derived; nil for a quadratic model, which has its relations given
+	Form        System           // 𝒟 of S = ½∫Φᵀ𝒟Φ
+	Lagrangian  []Product        // the same as a Lagrangian, S = ∫dτ d³x Σ products
+	Checked     bool             // the Noether identities were asked for
+	Identities  []rules.GaugeIdentity
+	Assumptions []field.Assumption
+}
+
+// Product is Coef·k²ⁿ·u⁽ⁱ⁾v⁽ʲ⁾ with n = Laplacians; U and V are places in the list of fields.
+// Where Coef is no polynomial in k² it holds k itself, and n is 0.
+type Product struct {
+	Coef           field.Elem
+	U, V           int
+	UOrder, VOrder int
+	Laplacians     int
+}
+
+// Invariant reports whether every identity that was checked holds.
+func (x *Expanded) Invariant() bool {
+	return !slices.ContainsFunc(x.Identities, func(g rules.GaugeIdentity) bool { return !g.Holds() })
+}
+
+// Expand brings variants of one model, over one field K, to second order; their background
+// equations are derived once. If check is true, the Noether identities of each are verified
+// before a gauge is fixed. A quadratic model is at second order as it stands. Refusals are a
+// diag.List; a limit or an interruption is a *budget.Stop.
+func Expand(variants []*parse.Model, check bool) (out []*Expanded, err error) {
+	defer budget.Catch(&err)
+	expander := new(rules.Expander)
+	for _, m := range variants {
+		x := &Expanded{Model: m, Checked: check}
+		if m.Covariant != nil || m.ADM != nil {
+			full, err := expander.Expand(m)
+			if err != nil {
+				return nil, err
+			}
+			x.Model, x.Background = full.Model, full.Equations
+		}
+		m.K.Budget().Stage("writing the Lagrangian as a quadratic form")
+		x.Form = Quadratic(x.Model)
+		x.Lagrangian = products(x.Form)
+		if check {
+			m.K.Budget().Stage("checking the Noether identities")
+			if x.Identities, err = expander.CheckGauge(m); err != nil {
+				return nil, err
+			}
+		}
+		x.Assumptions = m.K.Assumptions()
+		out = append(out, x)
+	}
+	return out, nil
+}
+
+// Variants reduces variants of one model, over one field K; what they share is found once.
+func Variants(variants []*parse.Model) ([]*Result, error) {
+	expander := new(rules.Expander)
+	var out []*Result
+	for _, m := range variants {
+		r, err := reduceBy(expander, m)
+		if err != nil {
+			return nil, err
+		}
+		out = append(out, r)
+	}
+	return out, nil
+}
+
+// products writes a form as a Lagrangian: squares first, then higher derivatives before lower
+// ones.
+func products(s System) []Product {
+	var out []Product
+	for _, t := range lagrangian(s) {
+		u, v, i, j := t.a, t.b, t.i, t.j
+		if s.carries(u, i, v, j) {
+			u, v, i, j = v, u, j, i
+		}
+		c := t.c.Lowest()
+		split, ok := show.Laplacians(c)
+		if !ok {
+			split = []field.Elem{c}
+		}
+		for n, c := range split {
+			if c = c.Lowest(); !c.IsZero() {
+				out = append(out, Product{c, u, v, i, j, n})
+			}
+		}
+	}
+	slices.SortStableFunc(out, func(p, q Product) int {
+		return cmp.Or(
+			cmp.Compare(b2i(p.U != p.V), b2i(q.U != q.V)),
+			-cmp.Compare(p.UOrder+p.VOrder, q.UOrder+q.VOrder),
+			cmp.Compare(min(p.U, p.V), min(q.U, q.V)),
+			cmp.Compare(max(p.U, p.V), max(q.U, q.V)),
+			-cmp.Compare(p.Laplacians, q.Laplacians))
+	})
+	return out
+}
+
+func b2i(b bool) int {
+	if b {
+		return 1
+	}
+	return 0
+}
+
+// carries says of two unlike fields whether the first, not the second, takes the Laplacians:
+// a potential of the shift or of the slices' shear, else the field that is differentiated less
+// by time, else the later one.
+func (s System) carries(u, i, v, j int) bool {
+	if u == v {
+		return false
+	}
+	potential := func(n int) bool { return s.Names[n] == "B" || s.Names[n] == "E" }
+	switch {
+	case potential(u) != potential(v):
+		return potential(u)
+	case i != j:
+		return i < j
+	}
+	return u > v
+}
+
+// LagrangianNode lays out the Lagrangian.
+func (x *Expanded) LagrangianNode() show.Node {
+	var list []show.FieldProduct
+	for _, p := range x.Lagrangian {
+		list = append(list, x.Show(p))
+	}
+	return show.FieldProducts(list)
+}
+
+// Show is a product with the names of its fields.
+func (x *Expanded) Show(p Product) show.FieldProduct {
+	return show.FieldProduct{
+		Coef: p.Coef, U: x.Form.Names[p.U], V: x.Form.Names[p.V],
+		UOrder: p.UOrder, VOrder: p.VOrder, Laplacians: p.Laplacians,
+	}
+}
