@@ -3,34 +3,12 @@ package series
 import (
 	"bytes"
 	"encoding/json"
-	"os"
-	"os/exec"
 	"strings"
 	"testing"
 
 	"remnant/expr/field"
+	"remnant/expr/outside"
 )
-
-// python runs a script of testdata, or says why not: a machine without SymPy skips the
-// check, unless CI is set.
-func python(t *testing.T, script string, in []byte) string {
-	t.Helper()
-	if err := exec.Command("python3", "-c", "import sympy").Run(); err != nil {
-		if os.Getenv("CI") != "" {
-			t.Fatalf("python3 with sympy is needed where CI is set: %v", err)
-		}
-		t.Skipf("no comparison: python3 with sympy does not run here: %v", err)
-	}
-	cmd := exec.Command("python3", script)
-	cmd.Stdin = bytes.NewReader(in)
-	var problems bytes.Buffer
-	cmd.Stderr = &problems
-	out, err := cmd.Output()
-	if err != nil {
-		t.Fatalf("%s: %v\n%s", script, err, problems.Bytes())
-	}
-	return string(out)
-}
 
 func TestAgainstSymPy(t *testing.T) {
 	w := newWorld(t)
@@ -78,7 +56,7 @@ func TestAgainstSymPy(t *testing.T) {
 		}
 		must(t, enc.Encode(map[string]any{"expr": e.String(), "order": order, "known": known}))
 	}
-	out := strings.Split(strings.TrimSpace(python(t, "testdata/series.py", in.Bytes())), "\n")
+	out := strings.Split(strings.TrimSpace(string(outside.SymPy(t, "testdata/series.py", in.Bytes()))), "\n")
 	if len(out) != len(cases) {
 		t.Fatalf("%d answers to %d cases", len(out), len(cases))
 	}

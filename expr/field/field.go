@@ -89,7 +89,6 @@ type Field struct {
 	splits      int   // how many factors were replaced by finer ones
 	roots       []Gen // generators with s² = r, in order of creation
 	epoch       int   // counts changes of the relations
-	resolving   []Gen // leaders whose value is being computed
 	assumptions []Assumption
 	functions   map[string]*FreeFunc
 }

@@ -4,34 +4,12 @@ import (
 	"bytes"
 	"encoding/json"
 	"math/rand/v2"
-	"os"
-	"os/exec"
 	"strings"
 	"testing"
 
 	"remnant/expr/field"
+	"remnant/expr/outside"
 )
-
-// python runs a script of testdata, or says why not: a machine without SymPy skips the
-// check, unless CI is set.
-func python(t *testing.T, script string, in []byte) string {
-	t.Helper()
-	if err := exec.Command("python3", "-c", "import sympy").Run(); err != nil {
-		if os.Getenv("CI") != "" {
-			t.Fatalf("python3 with sympy is needed where CI is set: %v", err)
-		}
-		t.Skipf("no comparison: python3 with sympy does not run here: %v", err)
-	}
-	cmd := exec.Command("python3", script)
-	cmd.Stdin = bytes.NewReader(in)
-	var problems bytes.Buffer
-	cmd.Stderr = &problems
-	out, err := cmd.Output()
-	if err != nil {
-		t.Fatalf("%s: %v\n%s", script, err, problems.Bytes())
-	}
-	return string(out)
-}
 
 // comparison is one line for the script.
 type comparison struct {
@@ -100,7 +78,7 @@ func TestAgainstSymPy(t *testing.T) {
 			t.Fatal(err)
 		}
 	}
-	out := strings.Split(strings.TrimSpace(python(t, "testdata/operators.py", in.Bytes())), "\n")
+	out := strings.Split(strings.TrimSpace(string(outside.SymPy(t, "testdata/operators.py", in.Bytes()))), "\n")
 	if len(out) != len(cases) {
 		t.Fatalf("%d answers to %d cases", len(out), len(cases))
 	}

@@ -124,10 +124,6 @@ func fractionOf(e field.Elem) fraction {
 	}
 }
 
-func isUnit(r *big.Rat) bool {
-	return r.IsInt() && r.Num().IsInt64() && (r.Num().Int64() == 1 || r.Num().Int64() == -1)
-}
-
 // inverseExp writes 1/exp(x) as exp(−x).
 func inverseExp(p placed) (placed, bool) {
 	c, ok := p.node.(call)
