@@ -128,6 +128,9 @@ func (e *elaborator) unknown(n *Name) *fault {
 	hint := "names are declared in constants, background, functions, fields or let"
 	if n.Name == "H" {
 		hint = "H is known where the scale factor a is declared in 'background'"
+	} else if _, ok := sliceRank[n.Name]; ok && e.isADM() {
+		return newFault(diag.NoMeaning, n.At, fmt.Sprintf("'%s' is a perturbation together with its background, and stands in the Lagrangian only", n.Text),
+			"on the background N is 1 and K is three times the physical rate")
 	} else if near, ok := nearest(n.Name, e.names); ok {
 		hint = fmt.Sprintf("the nearest name is '%s'", near)
 		if s := e.symbols[near]; s.at != (diag.Span{}) {

@@ -101,9 +101,10 @@ func (f *frame) sliceRicci() tensor {
 
 // admRank orders what may lead among the background equations of an adm model: functions of
 // time that enter them undifferentiated, then functions of time and of the slices, by less
-// derivatives first, and then H⁽ⁿ⁾ and the rest as elsewhere. What depends on time by itself can be
-// chosen for any history H(t); in the effective theory of inflation these are Λ(t) and c(t)
-// (Cheung et al. 2008, arXiv:0709.0293), for a general L(t, N, K) they are L and L,N.
+// derivatives first, then H⁽ⁿ⁾ and the rest as elsewhere, with functions of the slices alone where
+// undifferentiated functions stand. What depends on time by itself can be chosen for any history
+// H(t); in the effective theory of inflation these are Λ(t) and c(t) (Cheung et al. 2008,
+// arXiv:0709.0293), for a general L(t, N, K) they are L and L,N.
 func (x *expansion) admRank(g field.Gen, eqs []Equation) []int {
 	in := x.m.K.Info(g)
 	switch {
@@ -112,34 +113,47 @@ func (x *expansion) admRank(g field.Gen, eqs []Equation) []int {
 			return []int{7, 0, -int(g)}
 		}
 	case in.Kind == field.FreeFunction:
-		total, sliced, timely := onSlices(in)
+		d := dependenceOf(in)
 		switch {
-		case timely && !sliced && total == 0 && !x.moves(g, eqs):
+		case d.late || d.sliced > 1:
+		case d.onTime && !d.onSlices && !x.moves(g, eqs):
 			return []int{7, 0, -int(g)}
-		case timely && sliced && total <= 1:
-			return []int{6, -total, -int(g)}
+		case d.onTime && d.onSlices:
+			return []int{6, -d.sliced, -int(g)}
+		case d.onSlices:
+			return []int{4, -d.sliced, -int(g)}
 		}
 	}
 	return x.rank(g)
 }
 
-// onSlices counts the derivatives of a jet by quantities of the slices, and says whether its
-// function depends on such, and whether it depends on time beside them and is not
-// differentiated by it.
-func onSlices(in field.Info) (total int, sliced, timely bool) {
+// dependence says what the function of a jet depends on, and how the jet is differentiated.
+type dependence struct {
+	onTime, onSlices bool // on functions of time, or t; on N, K, R3 or Vn
+	late             bool // differentiated by the former
+	sliced           int  // derivatives by the latter
+}
+
+func dependenceOf(in field.Info) (d dependence) {
 	for i, arg := range in.Fn.Args {
 		switch in.Fn.ArgNames[i] {
 		case "N", "K", "R3", "Vn":
-			sliced = true
-			total += in.Index[i]
+			d.onSlices = true
+			d.sliced += in.Index[i]
 		default:
-			if in.Index[i] > 0 {
-				return 0, sliced, false
-			}
-			timely = timely || !arg.D().IsZero()
+			d.late = d.late || in.Index[i] > 0
+			d.onTime = d.onTime || !arg.D().IsZero()
 		}
 	}
-	return total, sliced, timely
+	return d
+}
+
+// neededRelation says what would make a background equation solvable.
+func (x *expansion) neededRelation() string {
+	if x.m.ADM != nil {
+		return "a function of time is needed that it fixes, or a relation: given H' = …"
+	}
+	return "a relation is needed: given phi' = …"
 }
 
 // moves reports whether a derivative of a function of time stands in the equations as derived.

@@ -185,6 +185,10 @@ func TestLeadersOfADM(t *testing.T) {
 			"for any H(t) the equations fix F and its derivative by N", []string{"F", "F,N"}},
 		{"one function", "constants b\nbackground a, V\nlagrangian adm = R3 + K.ij*K.ij - K^2 - V + b/N^4\n",
 			"V alone depends on time by itself; the history follows", []string{"V", "H'"}},
+		{"no time", "background a\nfunctions F(N, K)\nlagrangian adm = R3 + K.ij*K.ij - K^2 + F\n",
+			"F of N and K alone: F,N, as F and F,K belong together along the background, and then the history", []string{"F,N", "H'"}},
+		{"ghost condensate", "background a\nfunctions F(N)\nlagrangian adm = R3 + K.ij*K.ij - K^2 + F\n",
+			"F and F,N are constants: de Sitter with F,N = 0 (Arkani-Hamed, Cheng, Luty, Mukohyama 2004, hep-th/0312099)", []string{"F", "F,N"}},
 	}
 	for _, tc := range tests {
 		t.Run(tc.name, func(t *testing.T) {

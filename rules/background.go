@@ -200,7 +200,7 @@ func (x *expansion) relationError(eq Equation, rest field.Elem, err error) error
 	case errors.As(err, &stuck):
 		return x.refuse(NoLeader, x.m.LagrangianSpan,
 			fmt.Sprintf("the background equation of %s can be solved for none of its quantities: %s = 0", eq.From, show(rest)),
-			"a relation is needed: given phi' = …")
+			x.neededRelation())
 	}
 	return err
 }
