@@ -176,3 +176,43 @@ func (e *elaborator) admGauge(g Gauge, at diag.Span) {
 			"it is written on the slices where the scalar is uniform, so that δφ = 0 already: gauge unitary"))
 	}
 }
+
+// standIns gives a constant to each argument of a function that is a quantity of the slices.
+func (e *elaborator) standIns(fn *field.FreeFunc) map[int]field.Gen {
+	if !e.isADM() {
+		return nil
+	}
+	out := map[int]field.Gen{}
+	for i, name := range fn.ArgNames {
+		if _, ok := sliceRank[name]; !ok {
+			continue
+		}
+		sign := field.Unknown
+		if name == "N" {
+			sign = field.Positive
+		}
+		g, ok := e.k.Lookup(name)
+		if !ok {
+			g = e.k.Constant(name, sign)
+		}
+		out[i] = g
+	}
+	return out
+}
+
+// OnBackground puts the background values of the arguments for their stand-ins in x, the
+// definition or a derivative of it. It fails with *field.ErrZeroDivisor where x is singular there.
+func (d *FunctionDecl) OnBackground(x field.Elem) (field.Elem, error) {
+	if len(d.StandIns) == 0 {
+		return x, nil
+	}
+	return x.Substitute(func(g field.Gen) (field.Elem, bool) {
+		for i, own := range d.StandIns {
+			if own == g {
+				value, err := d.Fn.Args[i].Normal()
+				return value, err == nil
+			}
+		}
+		return field.Elem{}, false
+	})
+}

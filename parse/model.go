@@ -90,6 +90,11 @@ type FunctionDecl struct {
 	Fn         *field.FreeFunc
 	Definition Expr       // nil if it has none
 	Value      field.Elem // the definition on the background
+
+	// In the adm form N, K, R3 and Vn as arguments are no generators on the background. Formal is
+	// the definition with a constant in the place of each, StandIns; else it is Value.
+	Formal   field.Elem
+	StandIns map[int]field.Gen // by the number of the argument
 }
 
 // RelationDecl is a background relation: a given of the file, or one that the clock

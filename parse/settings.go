@@ -155,15 +155,23 @@ func (e *elaborator) definition(f *Function) {
 	}
 	e.anywhere, e.bound = true, map[string]field.Elem{} // as for its arguments
 	defer func() { e.anywhere, e.bound = false, nil }()
-	for i, arg := range sym.fn.Fn.Args {
-		if v, err := arg.Normal(); err == nil {
-			e.bound[sym.fn.Fn.ArgNames[i]] = v
+	fn := sym.fn.Fn
+	standIns := e.standIns(fn)
+	for i, arg := range fn.Args {
+		if g, ok := standIns[i]; ok {
+			e.bound[fn.ArgNames[i]] = e.k.Gen(g)
+		} else if v, err := arg.Normal(); err == nil {
+			e.bound[fn.ArgNames[i]] = v
 		}
 	}
-	value := e.background(f.Definition.X, "the definition of a function")
+	formal := e.background(f.Definition.X, "the definition of a function")
 	for i := range e.model.Functions {
 		if d := &e.model.Functions[i]; d.Name == sym.name {
-			d.Definition, d.Value = f.Definition.X, value
+			d.Definition, d.Formal, d.StandIns = f.Definition.X, formal, standIns
+			var err error
+			if d.Value, err = d.OnBackground(formal); err != nil {
+				panic(domainFault(err, f.Definition.X.Span()))
+			}
 		}
 	}
 }

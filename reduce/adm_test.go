@@ -11,6 +11,7 @@ import (
 	"remnant/expr/field"
 	"remnant/expr/poly"
 	"remnant/parse"
+	"remnant/parse/diag"
 )
 
 // pointOf gives each generator of a model a value that its name and its derivatives fix, so
@@ -177,6 +178,31 @@ func TestFunctionOfLapseAndCurvature(t *testing.T) {
 		}
 		return v
 	})
+}
+
+// The same with a definition, F(t, N, K) = tN²K³ + √N, on a point: numbers use the definition, its
+// derivatives by N and K taken before N = 1 and K = 3H are put in.
+func TestDefinedFunctionOfLapseAndCurvature(t *testing.T) {
+	for _, clock := range []string{"cosmic", "conformal", "efolds"} {
+		header := "clock " + clock + "\nconstants M > 0\nbackground a, V, c\n"
+		const action = "lagrangian adm = M^2/2*(R3 + K.ij*K.ij - K^2) - V + c/N^2 + "
+		defined := mustReduce(t, model(t, "test.act", header+"functions F(t, N, K) = t*N^2*K^3 + sqrt(N)\n"+action+"F\nkeep zeta\n"))
+		written := mustReduce(t, model(t, "test.act", header+action+"t*N^2*K^3 + sqrt(N)\nkeep zeta\n"))
+		at := diag.NewSource("point", "a = 2; H = 1/5; H' = 3/7; H'' = 1/11; H''' = 1/2; t = 3; M = 2; k = 5")
+		got, err := defined.At(at)
+		if err != nil {
+			t.Fatal(err)
+		}
+		want, err := written.At(at)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for n := range want.Single.Q {
+			if g, w := got.Single.Q[n].String(), want.Single.Q[n].String(); g != w {
+				t.Errorf("%s: q_%d = %s at the point, want %s", clock, n, g, w)
+			}
+		}
+	}
 }
 
 // General relativity with a canonical field: in the unitary gauge X = φ′²/(2N̄²N²), and

@@ -4,7 +4,8 @@ package reduce
 // definition is known on the background only, as f(x) with the arguments Aᵢ of the function
 // put in. An argument that is a generator is differentiated by as it stands. Any other, such
 // as X = φ′²/(2N̄²), needs a generator p of its own, here φ′; then f_X = (∂f/∂p)/(∂X/∂p), and the
-// derivative by a plain argument g at fixed X is ∂f/∂g − f_X ∂X/∂g.
+// derivative by a plain argument g at fixed X is ∂f/∂g − f_X ∂X/∂g. Arguments N and K of an adm
+// model have constants that stand in for them until all derivatives are taken.
 
 import (
 	"fmt"
@@ -26,7 +27,7 @@ func (p *point) defined(g field.Gen) (v field.Elem, ok bool, err error) {
 		if d.Fn != in.Fn || d.Definition == nil {
 			continue
 		}
-		v = d.Value
+		v = d.Formal
 		for i, n := range in.Index {
 			for range n {
 				if v, err = byArgument(p.k, d, v, i); err != nil {
@@ -34,7 +35,8 @@ func (p *point) defined(g field.Gen) (v field.Elem, ok bool, err error) {
 				}
 			}
 		}
-		return v, true, nil
+		v, err = d.OnBackground(v)
+		return v, err == nil, err
 	}
 	return v, false, nil
 }
@@ -51,7 +53,7 @@ func byArgument(k *field.Field, d parse.FunctionDecl, e field.Elem, i int) (fiel
 	}
 	for j, arg := range d.Fn.Args {
 		along := partial(k, arg, own)
-		if j == i || along.IsZero() {
+		if _, standsIn := d.StandIns[j]; j == i || standsIn || along.IsZero() {
 			continue
 		}
 		byJ, err := byArgument(k, d, e, j)
@@ -66,6 +68,9 @@ func byArgument(k *field.Field, d parse.FunctionDecl, e field.Elem, i int) (fiel
 // ownGenerator is the i-th argument if it is a generator, else a generator that stands in
 // this argument only.
 func ownGenerator(k *field.Field, d parse.FunctionDecl, i int) (g field.Gen, plain bool, err error) {
+	if g, ok := d.StandIns[i]; ok {
+		return g, true, nil
+	}
 	arg := d.Fn.Args[i]
 	gens := arg.Gens()
 	if len(gens) == 1 && arg.Equal(k.Raw(gens[0])) {
@@ -74,7 +79,8 @@ func ownGenerator(k *field.Field, d parse.FunctionDecl, i int) (g field.Gen, pla
 	for _, g := range slices.Backward(gens) {
 		elsewhere := false
 		for j, other := range d.Fn.Args {
-			elsewhere = elsewhere || j != i && other.Has(g)
+			_, standsIn := d.StandIns[j]
+			elsewhere = elsewhere || j != i && !standsIn && other.Has(g)
 		}
 		if !elsewhere && !partial(k, arg, g).IsZero() {
 			return g, false, nil
