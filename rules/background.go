@@ -110,8 +110,10 @@ func (x *expansion) orient(e field.Elem, number int, eqs []Equation) (field.Gen,
 	return x.orientSquare(e, number)
 }
 
-// rank orders what may lead: H⁽ⁿ⁾ with n ≥ 1, an undifferentiated function, a jet by scalars
-// alone, a constant, φ⁽ⁿ⁾ with n ≥ 1; within a class the highest derivative, then the first.
+// rank orders what may lead: H⁽ⁿ⁾ with n ≥ 1, an undifferentiated function, a jet of a function
+// of scalars alone, a constant, φ⁽ⁿ⁾ with n ≥ 1, a jet by scalars of a function that depends on
+// more (its value fixes mixed jets too, by division by the rate of what it depends on); within
+// a class the highest derivative, then the first.
 func (x *expansion) rank(g field.Gen) []int {
 	in := x.m.K.Info(g)
 	switch in.Kind {
@@ -125,17 +127,21 @@ func (x *expansion) rank(g field.Gen) []int {
 			return []int{1, in.Order, -int(g)}
 		}
 	case field.FreeFunction:
-		total := 0
+		class, total := 3, 0
 		for i, n := range in.Index {
 			total += n
-			if n > 0 && !x.isScalar(in.Fn.Args[i]) {
+			if x.isScalar(in.Fn.Args[i]) {
+				continue
+			}
+			if n > 0 {
 				return nil
 			}
+			class = 0
 		}
 		if total == 0 {
 			return []int{4, 0, -int(g)}
 		}
-		return []int{3, total, -int(g)}
+		return []int{class, total, -int(g)}
 	case field.Constant:
 		if in.Name != "pi" {
 			return []int{2, 0, -int(g)}
