@@ -22,8 +22,6 @@ type Expanded struct {
 	Background  []rules.Equation // as derived; nil for a quadratic model, which has its relations given
 	Form        System           // 𝒟 of S = ½∫Φᵀ𝒟Φ
 	Lagrangian  []Product        // the same as a Lagrangian, S = ∫dτ d³x Σ products
-	Checked     bool             // the Noether identities were asked for
-	Identities  []rules.GaugeIdentity
 	Assumptions []field.Assumption
 }
 
@@ -36,54 +34,52 @@ type Product struct {
 	Laplacians     int
 }
 
-// Invariant reports whether every identity that was checked holds.
-func (x *Expanded) Invariant() bool {
-	return !slices.ContainsFunc(x.Identities, func(g rules.GaugeIdentity) bool { return !g.Holds() })
-}
+// Variants works on variants of one model, in other gauges and sectors over one field K; what
+// they share is found once. Refusals are a diag.List; a limit or an interruption is a
+// *budget.Stop. The zero value is ready.
+type Variants struct{ expander rules.Expander }
 
-// Expand brings variants of one model, over one field K, to second order; their background
-// equations are derived once. If check is true, the Noether identities of each are verified
-// before a gauge is fixed. A quadratic model is at second order as it stands. Refusals are a
-// diag.List; a limit or an interruption is a *budget.Stop.
-func Expand(variants []*parse.Model, check bool) (out []*Expanded, err error) {
+// Reduce is the function Reduce beside other variants.
+func (v *Variants) Reduce(m *parse.Model) (*Result, error) { return reduceBy(&v.expander, m) }
+
+// Expand brings a variant to second order. A quadratic model is there as it stands.
+func (v *Variants) Expand(m *parse.Model) (x *Expanded, err error) {
 	defer budget.Catch(&err)
-	expander := new(rules.Expander)
-	for _, m := range variants {
-		x := &Expanded{Model: m, Checked: check}
-		if m.Covariant != nil || m.ADM != nil {
-			full, err := expander.Expand(m)
-			if err != nil {
-				return nil, err
-			}
-			x.Model, x.Background = full.Model, full.Equations
-		}
-		m.K.Budget().Stage("writing the Lagrangian as a quadratic form")
-		x.Form = Quadratic(x.Model)
-		x.Lagrangian = products(x.Form)
-		if check {
-			m.K.Budget().Stage("checking the Noether identities")
-			if x.Identities, err = expander.CheckGauge(m); err != nil {
-				return nil, err
-			}
-		}
-		x.Assumptions = m.K.Assumptions()
-		out = append(out, x)
-	}
-	return out, nil
-}
-
-// Variants reduces variants of one model, over one field K; what they share is found once.
-func Variants(variants []*parse.Model) ([]*Result, error) {
-	expander := new(rules.Expander)
-	var out []*Result
-	for _, m := range variants {
-		r, err := reduceBy(expander, m)
+	x = &Expanded{Model: m}
+	if m.Covariant != nil || m.ADM != nil {
+		full, err := v.expander.Expand(m)
 		if err != nil {
 			return nil, err
 		}
-		out = append(out, r)
+		x.Model, x.Background = full.Model, full.Equations
 	}
-	return out, nil
+	m.K.Budget().Stage("writing the Lagrangian as a quadratic form")
+	x.Form = Quadratic(x.Model)
+	x.Lagrangian = products(x.Form)
+	x.Assumptions = m.K.Assumptions()
+	return x, nil
+}
+
+// GaugeCheck holds the Noether identities of a covariant or adm model in its sector, verified
+// before a gauge is fixed. For tensors there are none.
+type GaugeCheck struct {
+	Sector     parse.Sector
+	Identities []rules.GaugeIdentity
+}
+
+// CheckGauge verifies the Noether identities of a covariant or adm model.
+func (v *Variants) CheckGauge(m *parse.Model) (g *GaugeCheck, err error) {
+	defer budget.Catch(&err)
+	ids, err := v.expander.CheckGauge(m)
+	if err != nil {
+		return nil, err
+	}
+	return &GaugeCheck{m.Sector, ids}, nil
+}
+
+// Holds reports whether every identity holds.
+func (g *GaugeCheck) Holds() bool {
+	return !slices.ContainsFunc(g.Identities, func(id rules.GaugeIdentity) bool { return !id.Holds() })
 }
 
 // products writes a form as a Lagrangian: squares first, then higher derivatives before lower

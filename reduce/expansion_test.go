@@ -4,8 +4,6 @@ import (
 	"slices"
 	"strings"
 	"testing"
-
-	"remnant/parse"
 )
 
 // quadraticFile writes an expansion as a model of the quadratic form: what was declared, the
@@ -37,7 +35,7 @@ func TestPrintedLagrangianReadsBack(t *testing.T) {
 	for _, name := range []string{"kestrel", "lapwing", "redshank", "ruff", "sanderling", "tern", "shearwater"} {
 		t.Run(name, func(t *testing.T) {
 			m := load(t, name+".act")
-			list, err := Expand([]*parse.Model{m}, false)
+			x, err := new(Variants).Expand(m)
 			if err != nil {
 				t.Fatal(err)
 			}
@@ -45,7 +43,7 @@ func TestPrintedLagrangianReadsBack(t *testing.T) {
 			if m.Keep != nil {
 				keep = m.Keep.Name
 			}
-			file := quadraticFile(list[0].Document(), m.Source.Text, keep)
+			file := quadraticFile(x.Document(nil), m.Source.Text, keep)
 			got, err := Reduce(model(t, "printed.act", file))
 			if err != nil {
 				t.Fatalf("%v\n%s", err, file)

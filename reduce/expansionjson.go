@@ -67,13 +67,13 @@ type LeftJSON struct {
 	Left  string `json:"left"`
 }
 
-// Document gives the JSON form.
-func (x *Expanded) Document() *ExpansionDocument {
+// Document gives the JSON form; check (nil: none) is put in.
+func (x *Expanded) Document(check *GaugeCheck) *ExpansionDocument {
 	m := x.Model
 	d := &ExpansionDocument{
 		Format: JSONFormat, Model: orNull(m.Title), Clock: m.Clock.String(),
 		Background: []BackgroundJSON{}, Relations: relationsJSON(m.K), Fields: append([]string{}, x.Form.Names...),
-		Lagrangian: show.Notation(x.LagrangianNode()), Assumptions: []string{},
+		Lagrangian: show.Notation(x.LagrangianNode()), Assumptions: []string{}, GaugeCheck: check.Document(),
 	}
 	d.Gauge, d.Sector = gaugeWords(m)
 	for _, eq := range x.Background {
@@ -85,12 +85,6 @@ func (x *Expanded) Document() *ExpansionDocument {
 	}
 	for _, a := range x.Assumptions {
 		d.Assumptions = append(d.Assumptions, assumptionText(a))
-	}
-	if x.Checked {
-		d.GaugeCheck = &GaugeCheckJSON{Holds: x.Invariant(), Identities: []IdentityJSON{}}
-		for _, g := range x.Identities {
-			d.GaugeCheck.Identities = append(d.GaugeCheck.Identities, identityJSON(g))
-		}
 	}
 	return d
 }
@@ -109,6 +103,18 @@ func relationsJSON(k *field.Field) []EquationJSON {
 		out = append(out, EquationJSON{show.Notation(show.Equation(show.Generator(k, rule.Leader), show.Elem(rule.Value)))})
 	}
 	return out
+}
+
+// Document gives the JSON form; it is nil for none.
+func (g *GaugeCheck) Document() *GaugeCheckJSON {
+	if g == nil {
+		return nil
+	}
+	d := &GaugeCheckJSON{Holds: g.Holds(), Identities: []IdentityJSON{}}
+	for _, id := range g.Identities {
+		d.Identities = append(d.Identities, identityJSON(id))
+	}
+	return d
 }
 
 func identityJSON(g rules.GaugeIdentity) IdentityJSON {

@@ -23,6 +23,8 @@ type Document struct {
 	Format      int             `json:"format"`      // 1
 	Model       *string         `json:"model"`       // the title
 	Clock       string          `json:"clock"`       // cosmic, conformal or efolds
+	Gauge       *string         `json:"gauge"`       // unitary, flat, newtonian or open; null for a quadratic model
+	Sector      *string         `json:"sector"`      // scalar, vector or tensor; null for a quadratic model
 	Background  []EquationJSON  `json:"background"`  // the relations, as they are applied
 	Assumptions []string        `json:"assumptions"` // "H != 0" or "x > 0"
 	Eliminated  []EliminateJSON `json:"eliminated"`  // in the order of the elimination
@@ -43,7 +45,8 @@ type Document struct {
 	Series     []SeriesJSON    `json:"series"`     // null if none was asked for
 	FormFactor *struct{}       `json:"formFactor"` // null: no form factor in a quadratic action
 	Stability  []StabilityJSON `json:"stability"`
-	At         *AtJSON         `json:"at"` // null if no point was given
+	GaugeCheck *GaugeCheckJSON `json:"gaugeCheck"` // null if it was not asked for
+	At         *AtJSON         `json:"at"`         // null if no point was given
 }
 
 // Quantities are what the action that remains is made of. At a point they are exact values.
@@ -165,15 +168,12 @@ type AssignmentJSON struct {
 func (r *Result) Document(expansions []*Expansion, at *Values) *Document {
 	d := &Document{
 		Format: JSONFormat, Clock: r.Model.Clock.String(),
-		Background: []EquationJSON{}, Assumptions: []string{}, Eliminated: []EliminateJSON{},
+		Background: relationsJSON(r.Model.K), Assumptions: []string{}, Eliminated: []EliminateJSON{},
 		Variable: orNull(r.Variable), Requested: orNull(r.Requested), Model: orNull(r.Model.Title),
 		Variables: append([]string{}, r.Remaining.Names...), DegreesOfFreedom: r.DegreesOfFreedom,
 		Quantities: r.quantities(r.Single, r.Several), Stability: []StabilityJSON{},
 	}
-	for _, rule := range r.Model.K.Rules() {
-		eq := show.Equation(show.Generator(r.Model.K, rule.Leader), show.Elem(rule.Value))
-		d.Background = append(d.Background, EquationJSON{show.Notation(eq)})
-	}
+	d.Gauge, d.Sector = gaugeWords(r.Model)
 	for _, a := range r.Assumptions {
 		d.Assumptions = append(d.Assumptions, assumptionText(a))
 	}
@@ -200,14 +200,7 @@ func (r *Result) Document(expansions []*Expansion, at *Values) *Document {
 }
 
 // Encode writes the document with an indent of two spaces.
-func (d *Document) Encode() ([]byte, error) {
-	var b bytes.Buffer
-	enc := json.NewEncoder(&b)
-	enc.SetEscapeHTML(false)
-	enc.SetIndent("", "  ")
-	err := enc.Encode(d)
-	return b.Bytes(), err
-}
+func (d *Document) Encode() ([]byte, error) { return encodeIndented(d) }
 
 func encode(v any) ([]byte, error) {
 	var b bytes.Buffer

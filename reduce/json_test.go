@@ -15,10 +15,10 @@ import (
 // documentKeys are the keys of format 1, in their order. A change of this list is a new
 // format.
 var documentKeys = []string{
-	"format", "model", "clock", "background", "assumptions", "eliminated", "variable", "variables",
+	"format", "model", "clock", "gauge", "sector", "background", "assumptions", "eliminated", "variable", "variables",
 	"requested", "relation", "degreesOfFreedom", "operator", "kinetic", "gradient", "mass",
 	"soundSpeedSquared", "soundSpeedEquation", "equationOfMotion", "canonical", "series", "formFactor",
-	"stability", "at",
+	"stability", "gaugeCheck", "at",
 }
 
 // keysOf lists the keys of a JSON object in their order.
@@ -54,7 +54,7 @@ func keysOf(t *testing.T, data []byte) []string {
 
 // TestEveryKeyIsThere holds for one field, several and none.
 func TestEveryKeyIsThere(t *testing.T) {
-	for _, name := range []string{"plover", "avocet", "wagtail", "curlew", "snipe"} {
+	for _, name := range []string{"plover", "avocet", "wagtail", "curlew", "snipe", "kestrel", "tern"} {
 		r := mustReduce(t, load(t, name+".act"))
 		data, err := r.Document(nil, nil).Encode()
 		if err != nil {

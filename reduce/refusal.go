@@ -76,10 +76,14 @@ func gaugeDiagnostic(m *parse.Model, err error) error {
 	for _, a := range g.Direction {
 		parts = append(parts, "δ"+show.UnicodeName(a.Name)+" = "+operatorOn(a.Coef, "ξ"))
 	}
+	at, hint := m.LagrangianSpan, "fix the gauge: leave out one field that this direction moves, where that fixes it completely"
+	if m.Gauge == parse.Open && (m.Covariant != nil || m.ADM != nil) {
+		at, hint = m.GaugeSpan, "an open gauge is for 'remnant expand'; unitary, flat and newtonian can be reduced"
+	}
 	return diag.List{{
-		Kind: GaugeDirection, Source: m.Source, Span: m.LagrangianSpan,
+		Kind: GaugeDirection, Source: m.Source, Span: at,
 		Summary: "the action has a gauge direction, " + strings.Join(parts, ", ") + ": its matrix is singular for every k",
-		Hint:    "fix the gauge: leave out one field that this direction moves, where that fixes it completely",
+		Hint:    hint,
 	}}
 }
 

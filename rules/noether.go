@@ -15,6 +15,7 @@ import (
 type GaugeIdentity struct {
 	Parameter string      // T of τ → τ + T, L of xⁱ → xⁱ + ∂ᵢL, or the transverse V of xⁱ → xⁱ + Vⁱ
 	Fields    []string    // the perturbations, in the order of the rows
+	Change    []oper.Oper // how each moves, an operator on the parameter
 	Left      []oper.Oper // what is left of each row of 𝒟·G; all zero if the identity holds
 }
 
@@ -53,6 +54,7 @@ func (s *Expander) CheckGauge(m *parse.Model) ([]GaugeIdentity, error) {
 			for j, n := range names {
 				sum = sum.Add(d.At(i, j).Mul(g.change[n]))
 			}
+			id.Change = append(id.Change, g.change[names[i]])
 			id.Left = append(id.Left, sum.Map(field.Elem.Lowest))
 		}
 		out = append(out, id)

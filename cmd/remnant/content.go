@@ -21,6 +21,7 @@ type findings struct {
 	*reduce.Result
 	expansions []*reduce.Expansion
 	values     *reduce.Values
+	check      *reduce.GaugeCheck
 	steps      bool // show the action after each step
 	full       bool // write out long expressions that follow from others
 }
@@ -43,12 +44,8 @@ func (f *findings) long(es ...field.Elem) bool {
 
 // pageOf writes the page.
 func pageOf(f *findings) *page {
-	p := &page{title: f.Model.Title, head: f.head()}
-	if p.title == "" {
-		name := filepath.Base(f.Model.Source.Name)
-		p.title = strings.TrimSuffix(name, filepath.Ext(name))
-	}
-	for _, s := range []*section{f.solved(), f.remains(), f.series(), f.atPoint()} {
+	p := &page{title: titleOf(f.Model), head: f.head()}
+	for _, s := range []*section{f.solved(), f.remains(), f.series(), f.atPoint(), checkSection(f.check)} {
 		if s != nil {
 			p.sections = append(p.sections, *s)
 		}
@@ -61,15 +58,34 @@ func clockName(c parse.Clock) string {
 	return [...]string{parse.Cosmic: "t", parse.Conformal: "eta", parse.Efolds: "N"}[c]
 }
 
-func (f *findings) head() []row {
-	symbol := maths(show.Symbol(clockName(f.Model.Clock), 0))
-	kind := [...]string{parse.Cosmic: "cosmic", parse.Conformal: "conformal", parse.Efolds: "e-folds"}[f.Model.Clock]
-	rows := []row{{label: words("clock"), value: join("", symbol, words(" ("+kind+"), prime = d/d"), symbol)}}
-	var relations, assumed []phrase
-	for _, r := range f.Model.K.Rules() {
-		relations = append(relations, compare(show.Generator(f.Model.K, r.Leader), equals, show.Elem(r.Value)))
+// titleOf is the model's title, or the name of its file.
+func titleOf(m *parse.Model) string {
+	if m.Title != "" {
+		return m.Title
 	}
-	for _, a := range f.Assumptions {
+	name := filepath.Base(m.Source.Name)
+	return strings.TrimSuffix(name, filepath.Ext(name))
+}
+
+func (f *findings) head() []row {
+	rows := append([]row{clockRow(f.Model.Clock)}, variantRows(f.Model)...)
+	return append(rows, conditionRows(f.Model.K, f.Assumptions)...)
+}
+
+func clockRow(c parse.Clock) row {
+	symbol := maths(show.Symbol(clockName(c), 0))
+	kind := [...]string{parse.Cosmic: "cosmic", parse.Conformal: "conformal", parse.Efolds: "e-folds"}[c]
+	return row{label: words("clock"), value: join("", symbol, words(" ("+kind+"), prime = d/d"), symbol)}
+}
+
+// conditionRows are the background relations and what is assumed.
+func conditionRows(k *field.Field, assumptions []field.Assumption) []row {
+	var rows []row
+	var relations, assumed []phrase
+	for _, r := range k.Rules() {
+		relations = append(relations, compare(show.Generator(k, r.Leader), equals, show.Elem(r.Value)))
+	}
+	for _, a := range assumptions {
 		op := unequal
 		if a.Positive {
 			op = greater

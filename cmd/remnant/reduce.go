@@ -9,20 +9,20 @@ import (
 
 	"remnant/expr/budget"
 	"remnant/parse"
+	"remnant/parse/diag"
 	"remnant/reduce"
 )
 
 // reduceOptions are the flags of reduce.
 type reduceOptions struct {
 	limits
-	format string
+	layout
+	variant
+	verification
 	steps  bool
 	full   bool
 	series int
 	at     string
-	output string
-	ascii  bool
-	width  int
 }
 
 // noSeries says that --series was not given.
@@ -42,7 +42,8 @@ func reduceCommand(std streams) *cobra.Command {
 		Example: "  remnant reduce testdata/plover.act\n" +
 			"  remnant reduce testdata/plover.act --steps --ascii\n" +
 			"  remnant reduce testdata/plover.act --at \"a = 1; H = 1/10; eps = 1/100; k = 2\"\n" +
-			"  remnant reduce testdata/gannet.act --series 4 --format latex -o gannet.tex",
+			"  remnant reduce testdata/gannet.act --series 4 --format latex -o gannet.tex\n" +
+			"  remnant reduce testdata/kestrel.act --sector all --check gauge",
 		Args: oneFile,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if err := o.check(cmd); err != nil {
@@ -52,27 +53,26 @@ func reduceCommand(std streams) *cobra.Command {
 		},
 	}
 	flags := cmd.Flags()
-	flags.StringVar(&o.format, "format", "text", "text, latex, json or markdown")
 	flags.BoolVar(&o.steps, "steps", false, "show the action after each step")
 	flags.BoolVar(&o.full, "full", false, "write out long expressions that follow from others")
 	flags.IntVar(&o.series, "series", noSeries, "expand what remains up to this `order`")
 	flags.StringVar(&o.at, "at", "", "give exact values at a `point`: \"H = 1/10; k = 2\", or @FILE")
-	flags.StringVarP(&o.output, "output", "o", "", "write to this `file`")
-	flags.BoolVar(&o.ascii, "ascii", false, "write text in ASCII")
-	flags.IntVar(&o.width, "width", 0, "wrap text to this many columns (default that of the terminal, or 100)")
+	o.variant.flags(cmd)
+	o.verification.flags(cmd)
+	o.layout.flags(cmd)
 	o.limits.flags(cmd)
 	return cmd
 }
 
 func (o *reduceOptions) check(cmd *cobra.Command) error {
-	if err := oneOf(cmd, "format", o.format, "text", "latex", "json", "markdown"); err != nil {
-		return err
+	for _, check := range []func(*cobra.Command) error{o.layout.check, o.variant.check, o.verification.check} {
+		if err := check(cmd); err != nil {
+			return err
+		}
 	}
 	switch {
 	case o.series != noSeries && o.series < 0, o.series > maxSeries:
 		return usage(cmd, "--series is an order from 0 to 100")
-	case o.width < 0 || o.width > 0 && o.width < minWidth:
-		return usage(cmd, "--width is at least 40 columns")
 	case cmd.Flags().Changed("at") && o.at == "":
 		return usage(cmd, "--at needs a point, such as \"H = 1/10; k = 2\"")
 	}
@@ -83,76 +83,112 @@ func (o *reduceOptions) run(ctx context.Context, std streams, path string) error
 	b, done := o.budget(ctx)
 	defer done()
 	stop := watch(std.err, b)
-	data, err := o.compute(std, path, b)
+	data, failed, err := o.compute(std, path, b)
 	stop()
 	if err != nil {
 		return err
 	}
-	return deliver(std, o.output, data)
+	if err := deliver(std, o.output, data); err != nil {
+		return err
+	}
+	return failed
 }
 
-// compute does all the work, so that nothing is written before it is done.
-func (o *reduceOptions) compute(std streams, path string, b *budget.Budget) (data []byte, err error) {
+// compute does all the work, so that nothing is written before it is done; failed is the
+// outcome of a check that did.
+func (o *reduceOptions) compute(std streams, path string, b *budget.Budget) (data []byte, failed, err error) {
 	defer budget.Catch(&err)
-	f, err := o.find(std, path, b)
-	if err != nil {
-		return nil, err
-	}
-	b.Stage("writing the result")
-	conformal := f.Model.Clock == parse.Conformal
-	switch o.format {
-	case "json":
-		return f.Document(f.expansions, f.values).Encode()
-	case "latex":
-		return latexPage(pageOf(f), conformal), nil
-	case "markdown":
-		return markdownPage(pageOf(f), conformal), nil
-	}
-	return textPage(pageOf(f), o.style(std, conformal)), nil
-}
-
-// style is that of the terminal, unless the text goes to a file.
-func (o *reduceOptions) style(std streams, conformal bool) textStyle {
-	st := textStyle{width: o.width, ascii: o.ascii, conformal: conformal}
-	toFile := o.output != "" && o.output != "-"
-	if st.width == 0 {
-		st.width = pageWidth
-		if !toFile {
-			st.width = terminalWidth(std.out)
-		}
-	}
-	st.bold = !toFile && inColour(std.out)
-	return st
-}
-
-// find reduces the model and computes what was asked for beside it.
-func (o *reduceOptions) find(std streams, path string, b *budget.Budget) (*findings, error) {
 	src, err := readSource(std, path)
 	if err != nil {
-		return nil, err
+		return nil, nil, err
 	}
 	m, err := parse.Load(src, b)
 	if err != nil {
-		return nil, err
+		return nil, nil, err
 	}
-	r, err := reduce.Reduce(m)
+	list, err := o.find(std, m)
+	if err != nil {
+		return nil, nil, err
+	}
+	failed = outcome(checksOf(list))
+	b.Stage("writing the result")
+	if o.format == "json" {
+		data, err = o.document(list)
+		return data, failed, err
+	}
+	pages := make([]*page, len(list))
+	for i, f := range list {
+		pages[i] = pageOf(f)
+	}
+	p := pages[0]
+	if o.all() {
+		p = sectorsPage(list, pages)
+	}
+	return o.layout.page(std, p, m.Clock == parse.Conformal), failed, nil
+}
+
+// document is the JSON form.
+func (o *reduceOptions) document(list []*findings) ([]byte, error) {
+	var out []*reduce.Document
+	for _, f := range list {
+		d := f.Document(f.expansions, f.values)
+		d.GaugeCheck = f.check.Document()
+		out = append(out, d)
+	}
+	if o.all() {
+		return reduce.EncodeSectors(out)
+	}
+	return out[0].Encode()
+}
+
+// checksOf lists the checks of reductions.
+func checksOf(list []*findings) []*reduce.GaugeCheck {
+	var out []*reduce.GaugeCheck
+	for _, f := range list {
+		out = append(out, f.check)
+	}
+	return out
+}
+
+// find reduces the model, in the sectors asked for, and computes what was asked for beside.
+func (o *reduceOptions) find(std streams, m *parse.Model) ([]*findings, error) {
+	models, err := o.variant.of(m)
 	if err != nil {
 		return nil, err
 	}
-	f := &findings{Result: r, steps: o.steps, full: o.full}
-	if f.expansions, err = o.expansions(r); err != nil {
-		return nil, err
-	}
-	if o.at != "" {
-		point, err := pointSource(std, o.at)
+	var variants reduce.Variants
+	var results []*reduce.Result
+	for _, m := range models {
+		r, err := variants.Reduce(m)
 		if err != nil {
 			return nil, err
 		}
-		if f.values, err = r.At(point); err != nil {
+		results = append(results, r)
+	}
+	checks, err := o.verification.of(&variants, models)
+	if err != nil {
+		return nil, err
+	}
+	var point *diag.Source
+	if o.at != "" {
+		if point, err = pointSource(std, o.at); err != nil {
 			return nil, err
 		}
 	}
-	return f, nil
+	var list []*findings
+	for i, r := range results {
+		f := &findings{Result: r, steps: o.steps, full: o.full, check: checks[i]}
+		if f.expansions, err = o.expansions(r); err != nil {
+			return nil, err
+		}
+		if point != nil {
+			if f.values, err = r.At(point); err != nil {
+				return nil, err
+			}
+		}
+		list = append(list, f)
+	}
+	return list, nil
 }
 
 // expansions are that in the model's small parameters, to its own order unless --series
