@@ -222,12 +222,15 @@ func (f *Field) argumentHolds(h, g Gen) bool {
 // chain is the argument of fn whose derivatives follow from D: the first that varies.
 func (f *Field) chain(fn *FreeFunc) (int, bool) {
 	for i, a := range fn.Args {
-		if !a.normalOrSelf().D().IsZero() {
+		if varies(a) {
 			return i, true
 		}
 	}
 	return 0, false
 }
+
+// varies reports whether an argument depends on time modulo the relations.
+func varies(arg Elem) bool { return !arg.normalOrSelf().D().IsZero() }
 
 func without(index []int, i int) []int {
 	return slices.Delete(slices.Clone(index), i, i+1)
@@ -375,7 +378,7 @@ func (f *Field) freeJetValue(g Gen) Elem {
 	lower := f.gens[low].Index
 	rest := f.value(low).D()
 	for j, arg := range gen.Fn.Args {
-		if j != i {
+		if j != i && varies(arg) {
 			rest = rest.Sub(f.FuncJet(gen.Fn, bump(lower, j)).Mul(arg.normalOrSelf().D()))
 		}
 	}

@@ -143,7 +143,7 @@ func (b *Background) freeJet(g Gen, n int) []uint64 {
 		lower := f.gens[low].Index
 		rest := b.derive(b.gen(low, n+1))
 		for j, arg := range gen.Fn.Args {
-			if j != i {
+			if j != i && varies(arg) {
 				rest = b.sub(rest, b.mul(b.gen(f.FuncJetGen(gen.Fn, bump(lower, j)), n), b.rate(arg, n)))
 			}
 		}
@@ -154,7 +154,9 @@ func (b *Background) freeJet(g Gen, n int) []uint64 {
 	}
 	rate := make([]uint64, n)
 	for j, arg := range gen.Fn.Args {
-		rate = b.add(rate, b.mul(b.gen(f.FuncJetGen(gen.Fn, bump(gen.Index, j)), n-1), b.rate(arg, n-1)))
+		if varies(arg) { // else its jet may hang on g itself
+			rate = b.add(rate, b.mul(b.gen(f.FuncJetGen(gen.Fn, bump(gen.Index, j)), n-1), b.rate(arg, n-1)))
+		}
 	}
 	return b.integrate(b.random(g), rate)
 }
