@@ -117,13 +117,18 @@ keep zeta
 //
 // written in the quadratic form with a function of time for each coefficient.
 func TestGeneralLagrangian(t *testing.T) {
-	full := mustReduce(t, model(t, "test.act", `background a
-functions F(t, N, K), C(t, N), E(t, N, K)
-lagrangian adm = F + C*K.ij*K.ij + E*R3
-keep zeta
-`))
-	if full.DegreesOfFreedom != 1 || full.Single.SoundSpeed2 != nil || full.Single.GrowthInK != 2 {
-		t.Errorf("%d degrees of freedom, c_s² %v with growth k^%d; want one with growth k²", full.DegreesOfFreedom, full.Single.SoundSpeed2, full.Single.GrowthInK)
+	tests := []struct {
+		name, declared, action string
+		coefficients           map[string]string
+	}{
+		{"all depends on time", "functions F(t, N, K), C(t, N), E(t, N, K)\n", "F + C*K.ij*K.ij + E*R3", map[string]string{
+			"LN":  "2*(F,N + 3*H^2*C,N) + F,N,N + 3*H^2*C,N,N",
+			"LKN": "F,N,K + 2*H*C,N", "LKK": "F,K,K", "LS": "C", "LR": "E", "LRN": "E,N", "LKR": "E,K",
+		}},
+		{"nothing depends on time by itself", "constants M > 0\nfunctions F(N, K)\n", "F + M^2/2*(K.ij*K.ij + R3)", map[string]string{
+			"LN":  "2*F,N + F,N,N",
+			"LKN": "F,N,K", "LKK": "F,K,K", "LS": "M^2/2", "LR": "M^2/2", "LRN": "0", "LKR": "0",
+		}},
 	}
 	byHand := mustReduce(t, model(t, "test.act", `background a, LN, LKN, LKK, LS, LR, LRN, LKR
 fields alpha, psi, zeta
@@ -134,21 +139,27 @@ lagrangian quadratic =
   - 4*a*((LR + LRN)*alpha + LKR*dK)*zeta,ii + 2*a*LR*zeta,i*zeta,i
 keep zeta
 `))
-	m := full.Model
-	coefficients := map[string]field.Elem{
-		"a": m.A, "H": eval(t, m, "H"), "k": m.Wavenumber, "LS": eval(t, m, "C"),
-		"LN":  eval(t, m, "2*(F,N + 3*H^2*C,N) + F,N,N + 3*H^2*C,N,N"),
-		"LKN": eval(t, m, "F,N,K + 2*H*C,N"), "LKK": eval(t, m, "F,K,K"),
-		"LR": eval(t, m, "E"), "LRN": eval(t, m, "E,N"), "LKR": eval(t, m, "E,K"),
+	for _, tc := range tests {
+		t.Run(tc.name, func(t *testing.T) {
+			full := mustReduce(t, model(t, "test.act", "background a\n"+tc.declared+"lagrangian adm = "+tc.action+"\nkeep zeta\n"))
+			if full.DegreesOfFreedom != 1 {
+				t.Errorf("%d degrees of freedom, want 1", full.DegreesOfFreedom)
+			}
+			m := full.Model
+			sameOperators(t, full, byHand, pointOf(m), func(g field.Gen) uint64 {
+				in := byHand.Model.K.Info(g)
+				text, ok := tc.coefficients[in.Name]
+				if !ok {
+					text = in.Name // a, H and k
+				}
+				v, ok := eval(t, m, text).Dn(in.Order).EvalMod(poly.Mersenne61, pointOf(m))
+				if !ok {
+					t.Fatal("the point is singular")
+				}
+				return v
+			})
+		})
 	}
-	sameOperators(t, full, byHand, pointOf(m), func(g field.Gen) uint64 {
-		in := byHand.Model.K.Info(g)
-		v, ok := coefficients[in.Name].Dn(in.Order).EvalMod(poly.Mersenne61, pointOf(m))
-		if !ok {
-			t.Fatal("the point is singular")
-		}
-		return v
-	})
 }
 
 // F(t, N, K) = f(t)N²K³, once as a free function and once written out: the jets of F along the
