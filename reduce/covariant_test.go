@@ -37,9 +37,8 @@ func (th theory) in(formula string) string {
 
 var identifier = regexp.MustCompile(`^[A-Za-z][A-Za-z0-9]*$`)
 
-// The quantities of Kobayashi, Yamaguchi, Yokoyama 2011, arXiv:1105.5723, with their
-// numbers: background equations (3.3)–(3.5) and (3.7)–(3.9) with (3.2) and (3.6), tensors (4.4), (4.5),
-// scalars (4.31)–(4.34).
+// The quantities of Kobayashi, Yamaguchi, Yokoyama 2011, arXiv:1105.5723: ℰ and 𝒫 of the
+// background equations (section 3), ℱ_T and 𝒢_T of tensors, Σ and Θ of scalars (section 4).
 const (
 	kyyEnergy = `2*X*K,X - K
 		+ 6*X*phi'*H*G3,X - 2*X*G3,phi
@@ -50,8 +49,8 @@ const (
 		+ 2*(phi'' + 2*H*phi')*G4,phi + 4*X*G4,phi,phi + 4*X*(phi'' - 2*H*phi')*G4,phi,X
 		- 2*X*(2*H^3*phi' + 2*H*H'*phi' + 3*H^2*phi'')*G5,X - 4*H^2*X^2*phi''*G5,X,X
 		+ 4*H*X*(phi'*phi'' - H*X)*G5,phi,X + 2*(2*(H'*X + H*phi'*phi'') + 3*H^2*X)*G5,phi + 4*H*X*phi'*G5,phi,phi`
-	kyyFT = `2*(G4 - X*(phi''*G5,X + G5,phi))`
-	kyyGT = `2*(G4 - 2*X*G4,X - X*(H*phi'*G5,X - G5,phi))`
+	kyyFT    = `2*(G4 - X*(phi''*G5,X + G5,phi))`
+	kyyGT    = `2*(G4 - 2*X*G4,X - X*(H*phi'*G5,X - G5,phi))`
 	kyySigma = `X*K,X + 2*X^2*K,X,X + 12*H*phi'*X*G3,X + 6*H*phi'*X^2*G3,X,X - 2*X*G3,phi - 2*X^2*G3,phi,X
 		- 6*H^2*G4 + 6*(H^2*(7*X*G4,X + 16*X^2*G4,X,X + 4*X^3*G4,X,X,X)
 		- H*phi'*(G4,phi + 5*X*G4,phi,X + 2*X^2*G4,phi,X,X))
@@ -107,17 +106,7 @@ func TestSecondOrderScalars(t *testing.T) {
 		t.Run(tc.model, func(t *testing.T) {
 			m := load(t, tc.model)
 			r := mustReduce(t, m)
-			if r.DegreesOfFreedom != 1 || r.Variable != "zeta" {
-				t.Fatalf("%d degrees of freedom in %q, want 1 in ζ", r.DegreesOfFreedom, r.Variable)
-			}
-			gt, ft := tc.at(t, m, kyyGT), tc.at(t, m, kyyFT)
-			sigma, theta := tc.at(t, m, kyySigma), tc.at(t, m, kyyTheta)
-			gs := sigma.Mul(gt.Pow(2)).Div(theta.Pow(2)).Add(gt.Scale(3, 1))
-			fs := m.A.Mul(gt.Pow(2)).Div(theta).D().Div(m.A).Sub(ft)
-			same(t, "kinetic", r.Single.Kinetic, gs.Mul(m.A.Pow(3)).Scale(2, 1))
-			same(t, "gradient", r.Single.Gradient, fs.Mul(m.A).Scale(2, 1))
-			same(t, "mass", r.Single.Mass, field.Elem{})
-			same(t, "sound speed squared", r.Single.SoundSpeed2, fs.Div(gs))
+			checkScalars(t, m, r, tc.at(t, m, kyyGT), tc.at(t, m, kyyFT), tc.at(t, m, kyySigma), tc.at(t, m, kyyTheta))
 		})
 	}
 }
@@ -135,10 +124,7 @@ func TestSecondOrderTensorsAndVectors(t *testing.T) {
 			same(t, "kinetic", r.Single.Kinetic, tc.at(t, m, "a^3/4*"+kyyGT))
 			same(t, "gradient", r.Single.Gradient, tc.at(t, m, "a/4*"+kyyFT))
 			same(t, "mass", r.Single.Mass, field.Elem{})
-			v := mustReduce(t, m.Variant(m.Gauge, parse.VectorSector))
-			if v.DegreesOfFreedom != 0 || len(v.Remaining.Names) != 0 {
-				t.Errorf("vectors: %d degrees of freedom in %v, want none", v.DegreesOfFreedom, v.Remaining.Names)
-			}
+			noVectors(t, m)
 		})
 	}
 }
@@ -152,19 +138,6 @@ func TestGeneralKineticFunction(t *testing.T) {
 	same(t, "z²", s.ZSquared, eval(t, m, "a^2*phi'^2*(P,X + phi'^2*P,X,X)/H^2"))
 }
 
-// operator is 𝒟 = Σ (−D)ⁿqₙDⁿ of the one field that remains.
-func (s *Single) operator() oper.Oper {
-	var sum oper.Oper
-	for n, q := range s.Q {
-		term := oper.Mono(q, n)
-		for range n {
-			term = term.D().Neg()
-		}
-		sum = sum.Add(term)
-	}
-	return sum
-}
-
 // substituted is e𝒟e, the operator of v where u = e·v.
 func substituted(d oper.Oper, e field.Elem) oper.Oper { return oper.New(e).Mul(d).Mul(oper.New(e)) }
 
@@ -176,7 +149,7 @@ func TestGaugesAgree(t *testing.T) {
 		t.Run(name, func(t *testing.T) {
 			m := load(t, name)
 			unitary := mustReduce(t, m)
-			want := unitary.Single.operator()
+			want := unitary.Remaining.Matrix().At(0, 0)
 
 			flat := m.Variant(parse.Flat, parse.ScalarSector)
 			flat.Keep = &parse.Keep{Name: "dphi", Field: fieldIndex(t, flat, "dphi")}
@@ -184,7 +157,7 @@ func TestGaugesAgree(t *testing.T) {
 			if r.Variable != "dphi" {
 				t.Fatalf("flat gauge: %q remains, want δφ", r.Variable)
 			}
-			if got := substituted(r.Single.operator(), eval(t, m, "-phi'/H")); !got.Equal(want) {
+			if got := substituted(r.Remaining.Matrix().At(0, 0), eval(t, m, "-phi'/H")); !got.Equal(want) {
 				t.Errorf("flat gauge: %v, want %v", got, want)
 			}
 
@@ -197,7 +170,7 @@ func TestGaugesAgree(t *testing.T) {
 			if r.Variable != "u" {
 				t.Fatalf("newtonian gauge: %q remains, want ζ − Hδφ/φ'", r.Variable)
 			}
-			if got := r.Single.operator(); !got.Equal(want) {
+			if got := r.Remaining.Matrix().At(0, 0); !got.Equal(want) {
 				t.Errorf("newtonian gauge: %v, want %v", got, want)
 			}
 		})
@@ -231,4 +204,255 @@ func TestSquaresOfCurvature(t *testing.T) {
 	if total != 8 {
 		t.Errorf("%d degrees of freedom in all, want 8", total)
 	}
+}
+
+// Unitary variables of a Gauss–Bonnet coupling, M²R/2 + X − V + f(φ)·R²_GB: 𝒢_T, ℱ_T, Σ and Θ of
+// Kobayashi, Yamaguchi, Yokoyama 2011, arXiv:1105.5723, section 2 (its functions) and 4.
+const (
+	gaussBonnetGT    = "M^2 + 8*H*(f)'"
+	gaussBonnetFT    = "M^2 + 8*(f)''"
+	gaussBonnetSigma = "phi'^2/2 - 3*M^2*H^2 - 48*H^3*(f)'"
+	gaussBonnetTheta = "M^2*H + 12*H^2*(f)'"
+)
+
+// The functions K, G₃, G₄, G₅ that are the Gauss–Bonnet coupling, the same paper, section 2.
+const gaussBonnetFunctions = `model "Dotterel: the Gauss–Bonnet coupling in other words"
+constants M > 0
+functions V(phi), f(phi)
+background a, phi
+gauge unitary
+lagrangian covariant =
+    M^2*R/2 + X - V + 8*f,phi,phi,phi,phi*X^2*(3 - log(X)) - 4*f,phi,phi,phi*X*(7 - 3*log(X))*box[phi]
+  + 4*f,phi,phi*X*(2 - log(X))*R + 4*f,phi,phi*(1 - log(X))*(box[phi]^2 - phi;ab*phi;ab)
+  - 4*f,phi*log(X)*G.ab*phi;ab
+  + 4*f,phi/(6*X)*(box[phi]^3 - 3*box[phi]*phi;ab*phi;ab + 2*phi;ab*phi;bc*phi;ca)
+keep zeta
+`
+
+func TestGaussBonnet(t *testing.T) {
+	for name, m := range map[string]*parse.Model{
+		"curvature": load(t, "ruff.act"), "functions": model(t, "dotterel.act", gaussBonnetFunctions),
+	} {
+		t.Run(name, func(t *testing.T) {
+			r := mustReduce(t, m)
+			gt, ft := eval(t, m, gaussBonnetGT), eval(t, m, gaussBonnetFT)
+			sigma, theta := eval(t, m, gaussBonnetSigma), eval(t, m, gaussBonnetTheta)
+			checkScalars(t, m, r, gt, ft, sigma, theta)
+			r = mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
+			same(t, "kinetic of tensors", r.Single.Kinetic, gt.Mul(m.A.Pow(3)).Scale(1, 4))
+			same(t, "gradient of tensors", r.Single.Gradient, ft.Mul(m.A).Scale(1, 4))
+			noVectors(t, m)
+		})
+	}
+}
+
+// f(R)/2: 3FH² = (FR − f)/2 − 3HF', −2FH' = F” − HF', scalars with Q_s = 3F'²/(2F(H + F'/2F)²) in
+// S = ∫a³Q_s[½ζ'² − ½(∂ζ)²/a²], with F = f,R; De Felice, Tsujikawa 2010, arXiv:1002.4928, for
+// κ = 1. Tensors are those of general relativity with F in the place of M².
+func TestCurvatureFunction(t *testing.T) {
+	m := load(t, "sanderling.act")
+	const energy = "3*f,R*H^2 - (f,R*(12*H^2 + 6*H') - f)/2 + 3*H*(f,R)'"
+	const rate = "2*f,R*H' + (f,R)'' - H*(f,R)'"
+	wantA, wantRate := eval(t, m, "a^3*("+energy+")"), eval(t, m, "3*a^3*("+energy+" + "+rate+")")
+	x, err := rules.Expand(m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	same(t, "equation of A", &x.Equations[0].Value, wantA)
+	same(t, "equation of ζ", &x.Equations[1].Value, wantRate)
+
+	r := mustReduce(t, m)
+	if r.DegreesOfFreedom != 1 || r.Variable != "zeta" {
+		t.Fatalf("%d degrees of freedom in %q, want 1 in ζ", r.DegreesOfFreedom, r.Variable)
+	}
+	q := eval(t, m, "3*(f,R)'^2/(2*f,R*(H + (f,R)'/(2*f,R))^2)")
+	same(t, "kinetic", r.Single.Kinetic, q.Mul(m.A.Pow(3)))
+	same(t, "gradient", r.Single.Gradient, q.Mul(m.A))
+	same(t, "mass", r.Single.Mass, field.Elem{})
+	curvatureTensors(t, m)
+	for _, g := range []parse.Gauge{parse.Flat, parse.Newtonian} {
+		r := mustReduce(t, m.Variant(g, parse.ScalarSector))
+		if r.DegreesOfFreedom != 1 {
+			t.Errorf("%v gauge: %d degrees of freedom, want 1", g, r.DegreesOfFreedom)
+			continue
+		}
+		same(t, "sound speed squared", r.Single.SoundSpeed2, m.K.Int(1))
+	}
+}
+
+func curvatureTensors(t *testing.T, m *parse.Model) {
+	t.Helper()
+	r := mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
+	if r.DegreesOfFreedom != 2 {
+		t.Errorf("tensors: %d degrees of freedom, want 2", r.DegreesOfFreedom)
+	}
+	same(t, "kinetic of tensors", r.Single.Kinetic, eval(t, m, "a^3*f,R/4"))
+	same(t, "gradient of tensors", r.Single.Gradient, eval(t, m, "a*f,R/4"))
+	noVectors(t, m)
+}
+
+// f(R, φ)/2 + ω(φ)X: the background equations of Hwang, Noh 1996, Phys. Rev. D 54, 1460, as in De
+// Felice, Tsujikawa 2010, arXiv:1002.4928, section 6; two scalars, both with the speed of light.
+func TestCurvatureFunctionOfField(t *testing.T) {
+	m := load(t, "phalarope.act")
+	const energy = "3*f,R*H^2 - (f,R*(12*H^2 + 6*H') - f)/2 + 3*H*(f,R)' - omega*phi'^2/2"
+	const rate = "2*f,R*H' + (f,R)'' - H*(f,R)' + omega*phi'^2"
+	want := []field.Elem{
+		eval(t, m, "a^3*("+energy+")"), eval(t, m, "3*a^3*("+energy+" + "+rate+")"),
+		eval(t, m, "-a^3*omega*(phi'' + 3*H*phi' + (omega,phi*phi'^2 - f,phi)/(2*omega))"),
+	}
+	x, err := rules.Expand(m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, eq := range x.Equations {
+		same(t, "equation of "+eq.From, &eq.Value, want[i])
+	}
+	for _, g := range []parse.Gauge{parse.Newtonian, parse.Flat, parse.Unitary} {
+		r := mustReduce(t, m.Variant(g, parse.ScalarSector))
+		if r.DegreesOfFreedom != 2 {
+			t.Fatalf("%v gauge: %d degrees of freedom, want 2", g, r.DegreesOfFreedom)
+		}
+	}
+	curvatureTensors(t, m)
+}
+
+// fieldSpace is the quadratic form of the scalars of S = ∫√−g[M²R/2 − ½G_IJ∂φᴵ∂φᴶ − V] in the flat
+// gauge, for G = diag(1, f(φ)):
+//
+//	½a³[G_IJ D_tδφᴵD_tδφᴶ − G_IJ∂δφᴵ∂δφᴶ/a² − M_IJδφᴵδφᴶ],
+//	M_IJ = V;IJ − R_IKLJ φ'ᴷφ'ᴸ − D_t(a³φ'_Iφ'_J/H)/(a³M²)
+//
+// (Sasaki, Stewart 1996, astro-ph/9507001). In two dimensions −R_IKLJ φ'ᴷφ'ᴸ = κ(G_IJφ'² − φ'_Iφ'_J),
+// κ the Gaussian curvature.
+func fieldSpace(t *testing.T, m *parse.Model) oper.Matrix {
+	k := m.K
+	value := func(text string) field.Elem { return eval(t, m, text) }
+	a3 := m.A.Pow(3)
+	metric := [2]field.Elem{k.Int(1), value("f")}
+	// rate[L][I] = Γᴸ_KI φ'ᴷ
+	rate := [2][2]field.Elem{{{}, value("-f,phi*chi'/2")}, {value("f,phi*chi'/(2*f)"), value("f,phi*phi'/(2*f)")}}
+	hessian := [2][2]field.Elem{
+		{value("V,phi,phi"), value("V,phi,chi - f,phi*V,chi/(2*f)")},
+		{value("V,phi,chi - f,phi*V,chi/(2*f)"), value("V,chi,chi + f,phi*V,phi/2")},
+	}
+	curvature, square := value("(f,phi)^2/(4*f^2) - f,phi,phi/(2*f)"), value("phi'^2 + f*chi'^2")
+	velocity := [2]field.Elem{value("phi'"), value("f*chi'")}
+	drag := func(i, j int) field.Elem { return a3.Mul(velocity[i]).Mul(velocity[j]).Div(value("H")) }
+	d := oper.NewMatrix(2, 2)
+	for i := range 2 {
+		for j := range 2 {
+			var sum oper.Oper
+			for l := range 2 { // (D_tδφ)ᴸ
+				left, right := oper.New(rate[l][i]), oper.New(rate[l][j])
+				if l == i {
+					left = left.Add(oper.Mono(k.Int(1), 1))
+				}
+				if l == j {
+					right = right.Add(oper.Mono(k.Int(1), 1))
+				}
+				sum = sum.Add(left.Adjoint().Mul(right.Scale(a3.Mul(metric[l]))))
+			}
+			mass := hessian[i][j].Sub(curvature.Mul(velocity[i]).Mul(velocity[j]))
+			along := drag(i, j).D()
+			for l := range 2 {
+				along = along.Sub(rate[l][i].Mul(drag(l, j))).Sub(rate[l][j].Mul(drag(i, l)))
+			}
+			mass = mass.Sub(along.Div(a3).Div(value("M^2")))
+			if i == j {
+				mass = mass.Add(curvature.Mul(metric[i]).Mul(square)).Add(metric[i].Mul(value("k^2/a^2")))
+			}
+			d.Set(i, j, sum.Sub(oper.New(mass.Mul(a3))))
+		}
+	}
+	return d
+}
+
+// What remains of two fields, whichever of A, δφ and δχ that is: the momentum constraint of the
+// flat gauge, 2M²HA = φ'δφ + fχ'δχ (the same paper), takes one to the other.
+func TestTwoScalars(t *testing.T) {
+	m := load(t, "tern.act")
+	r := mustReduce(t, m)
+	if r.DegreesOfFreedom != 2 || len(r.Remaining.Names) != 2 {
+		t.Fatalf("%d degrees of freedom in %v, want 2", r.DegreesOfFreedom, r.Remaining.Names)
+	}
+	at := r.Remaining.index
+	change := oper.NewMatrix(2, 2)
+	solved := [2]struct {
+		name         string
+		fromA, other string
+	}{{"dphi", "2*M^2*H/phi'", "-f*chi'/phi'"}, {"dchi", "2*M^2*H/(f*chi')", "-phi'/(f*chi')"}}
+	for i, s := range solved {
+		if j := at(s.name); j >= 0 {
+			change.Set(i, j, oper.New(m.K.Int(1)))
+			continue
+		}
+		change.Set(i, at("A"), oper.New(eval(t, m, s.fromA)))
+		change.Set(i, at(solved[1-i].name), oper.New(eval(t, m, s.other)))
+	}
+	want, err := fieldSpace(t, m).Congruence(change).NormalForm()
+	if err != nil {
+		t.Fatal(err)
+	}
+	got, err := r.Remaining.Form()
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !got.Matrix(2).Equal(want.Matrix(2)) {
+		t.Errorf("got %v, want %v", got, want)
+	}
+	for i, c := range []int64{1, -2, 1} {
+		same(t, "coefficient of the sound speeds", &r.Several.SoundSpeeds[i], m.K.Int(c))
+	}
+	noVectors(t, m)
+}
+
+// A scalar beside a perfect fluid P(Y), of which c_s² = P_Y/(P_Y + 2YP_YY) (Garriga, Mukhanov
+// 1999, hep-th/9904176): two scalars, (c² − 1)(c² − c_s²) = 0, the graviton, no vectors.
+func TestScalarAndFluid(t *testing.T) {
+	m := load(t, "puffin.act")
+	for _, g := range []parse.Gauge{parse.Flat, parse.Unitary, parse.Newtonian} {
+		r := mustReduce(t, m.Variant(g, parse.ScalarSector))
+		if r.DegreesOfFreedom != 2 {
+			t.Fatalf("%v gauge: %d degrees of freedom, want 2", g, r.DegreesOfFreedom)
+		}
+		if g == parse.Newtonian {
+			continue // its variables mix A with time derivatives
+		}
+		if len(r.Several.SoundSpeeds) != 3 {
+			t.Fatalf("%v gauge: equation of the sound speeds %v, want degree 2", g, r.Several.SoundSpeeds)
+		}
+		fluid := eval(t, m, "P,X/(P,X + chi'^2*P,X,X)")
+		for i, want := range []field.Elem{fluid, fluid.Add(m.K.Int(1)).Neg(), m.K.Int(1)} {
+			same(t, "coefficient of the sound speeds", &r.Several.SoundSpeeds[i], want)
+		}
+	}
+	r := mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
+	if r.DegreesOfFreedom != 2 {
+		t.Errorf("tensors: %d degrees of freedom, want 2", r.DegreesOfFreedom)
+	}
+	noVectors(t, m)
+}
+
+func noVectors(t *testing.T, m *parse.Model) {
+	t.Helper()
+	v := mustReduce(t, m.Variant(m.Gauge, parse.VectorSector))
+	if v.DegreesOfFreedom != 0 || len(v.Remaining.Names) != 0 {
+		t.Errorf("vectors: %d degrees of freedom in %v, want none", v.DegreesOfFreedom, v.Remaining.Names)
+	}
+}
+
+// checkScalars compares with S = ∫a³[G_S ζ'² − F_S(∂ζ)²/a²], G_S = ΣG_T²/Θ² + 3G_T and
+// F_S = (1/a)(aG_T²/Θ)' − F_T.
+func checkScalars(t *testing.T, m *parse.Model, r *Result, gt, ft, sigma, theta field.Elem) {
+	t.Helper()
+	if r.DegreesOfFreedom != 1 || r.Variable != "zeta" {
+		t.Fatalf("%d degrees of freedom in %q, want 1 in ζ", r.DegreesOfFreedom, r.Variable)
+	}
+	gs := sigma.Mul(gt.Pow(2)).Div(theta.Pow(2)).Add(gt.Scale(3, 1))
+	fs := m.A.Mul(gt.Pow(2)).Div(theta).D().Div(m.A).Sub(ft)
+	same(t, "kinetic", r.Single.Kinetic, gs.Mul(m.A.Pow(3)).Scale(2, 1))
+	same(t, "gradient", r.Single.Gradient, fs.Mul(m.A).Scale(2, 1))
+	same(t, "mass", r.Single.Mass, field.Elem{})
+	same(t, "sound speed squared", r.Single.SoundSpeed2, fs.Div(gs))
 }
