@@ -134,7 +134,7 @@ func (e *elaborator) unknown(n *Name) *fault {
 	} else if near, ok := nearest(n.Name, e.names); ok {
 		hint = fmt.Sprintf("the nearest name is '%s'", near)
 		if s := e.symbols[near]; s.at != (diag.Span{}) {
-			hint += fmt.Sprintf(", declared on line %d", e.src.Line(s.at.Start))
+			hint += fmt.Sprintf(", declared on line %d", e.file.Source.Line(s.at.Start))
 		}
 	}
 	return newFault(diag.UnknownName, n.At, fmt.Sprintf("'%s' is not declared", n.Text), hint)

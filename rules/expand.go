@@ -90,6 +90,8 @@ func catchRefusal(err *error) {
 	case nil:
 	case diag.List:
 		*err = v
+	case *field.Unsolvable: // relations that lead back to themselves
+		*err = v
 	default:
 		panic(v)
 	}

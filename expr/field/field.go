@@ -70,6 +70,7 @@ type generator struct {
 	rule  *rule       // the relation of which this generator is the leader
 	value cached      // its value modulo the relations
 	deriv cached      // its derivative modulo the relations
+	open  bool        // its value is being found
 }
 
 // cached is a value that holds for one state of the relations.

@@ -94,7 +94,8 @@ func (f *Field) Rules() []Rule {
 	return out
 }
 
-func (f *Field) settle(queue []posted) error {
+func (f *Field) settle(queue []posted) (err error) {
+	defer CatchCycle(&err)
 	for n := 0; len(queue) > 0; n++ {
 		if n == maxSettling {
 			return &Unsolvable{Sources: queue[0].sources, Rest: queue[0].rest, Cyclic: true}
@@ -108,6 +109,18 @@ func (f *Field) settle(queue []posted) error {
 		queue = append(more, queue...)
 	}
 	return nil
+}
+
+// CatchCycle, deferred, turns the panic of a value that leads back to itself into *err. The
+// relations are kept so that none does; a value that still would must not hang.
+func CatchCycle(err *error) {
+	switch v := recover().(type) {
+	case nil:
+	case *Unsolvable:
+		*err = v
+	default:
+		panic(v)
+	}
 }
 
 // workIn reduces one relation, makes it a rule and returns the relations to post again.
@@ -232,6 +245,14 @@ func (f *Field) chain(fn *FreeFunc) (int, bool) {
 // varies reports whether an argument depends on time modulo the relations.
 func varies(arg Elem) bool { return !arg.normalOrSelf().D().IsZero() }
 
+// chainNumber is the argument of the chain; −1 if none varies.
+func (f *Field) chainNumber(fn *FreeFunc) int {
+	if i, ok := f.chain(fn); ok {
+		return i
+	}
+	return -1
+}
+
 func without(index []int, i int) []int {
 	return slices.Delete(slices.Clone(index), i, i+1)
 }
@@ -272,19 +293,30 @@ func (f *Field) rank(g Gen) []int {
 	return []int{1, 0, -int(gen.base)}
 }
 
-// install makes r stand and takes back the rules whose leader or value it touches.
+// install makes r stand and takes back the rules whose leader or value it touches, and those
+// of free functions of which another argument now is the first that varies.
 func (f *Field) install(r *rule) []posted {
 	var again []posted
-	for _, gen := range f.gens {
-		old := gen.rule
-		if old == nil || !f.touches(old, r.leader) {
-			continue
-		}
-		gen.rule = nil
+	takeBack := func(old *rule) {
+		f.gens[old.leader].rule = nil
 		again = append(again, posted{f.Raw(old.leader).Sub(old.value), old.leader, true, old.sources})
+	}
+	chains := map[*FreeFunc]int{}
+	for _, gen := range f.gens {
+		if old := gen.rule; old != nil && f.touches(old, r.leader) {
+			takeBack(old)
+		} else if old != nil && gen.Kind == FreeFunction {
+			chains[gen.Fn] = f.chainNumber(gen.Fn)
+		}
 	}
 	f.gens[r.leader].rule = r
 	f.epoch++
+	for _, gen := range f.gens {
+		if old := gen.rule; old != nil && old != r && gen.Kind == FreeFunction && chains[gen.Fn] != f.chainNumber(gen.Fn) {
+			takeBack(old)
+			f.epoch++
+		}
+	}
 	gen, moves := f.gens[r.leader], true
 	if gen.Kind == FreeFunction {
 		_, moves = f.chain(gen.Fn)
@@ -316,6 +348,11 @@ func (f *Field) value(g Gen) Elem {
 	if gen.value.epoch == f.epoch {
 		return gen.value.elem
 	}
+	if gen.open {
+		panic(&Unsolvable{Rest: f.Raw(g), Cyclic: true})
+	}
+	gen.open = true
+	defer func() { gen.open = false }()
 	v := f.Raw(g)
 	switch gen.Kind {
 	case Function:

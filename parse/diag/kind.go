@@ -162,7 +162,8 @@ const (
 	// NotYetSupported: part of the notation that cannot be computed yet.
 	//
 	// Example:
-	//	lagrangian covariant = R
+	//	background a
+	//	lagrangian covariant = R*exp(box)[R]
 	NotYetSupported Kind = "not yet supported"
 
 	// IndexOnce: an index that is not summed.
