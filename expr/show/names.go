@@ -178,12 +178,9 @@ func GoName(name string, primes int, by []string) string {
 	return b.String()
 }
 
-// writeExported appends the name in mixed caps: u_1 is U1, eps is Eps.
+// writeExported appends the name in mixed caps: u_1 is U1, eps is Eps, X(chi) is XChi.
 func writeExported(b *strings.Builder, name string) {
-	for _, part := range strings.Split(name, "_") {
-		if part == "" {
-			continue
-		}
+	for _, part := range strings.FieldsFunc(name, func(r rune) bool { return !unicode.IsLetter(r) && !unicode.IsDigit(r) }) {
 		if l, ok := asciiLetter(part); ok {
 			part = l
 		}
