@@ -237,6 +237,7 @@ class Geometry:
         h[2][2] = a * a * (exponential(2 * zeta + 2 * at("E").d(3).d(3)) + w * w)
         h[0][2] = h[2][0] = a * a * w
         lift = self.inverse3(h)
+        self.a, self.lapse, self.n, self.shift, self.h, self.lift = a, lapse, n, shift, h, lift
         square = sum((lift[i][j] * shift[i] * shift[j] for i in range(3) for j in range(3)), zero)
         self.g = [[square - n * n] + shift] + [[shift[i]] + h[i] for i in range(3)]
         det = determinant(self.g)
@@ -328,11 +329,46 @@ class Geometry:
 
 
 def trace(m):
-    return sum((m[a][a] for a in R4), Q())
+    return sum((m[a][a] for a in range(len(m))), Q())
 
 
 def matmul(m, n):
-    return [[sum((m[a][c] * n[c][b] for c in R4), Q()) for b in R4] for a in R4]
+    span = range(len(m))
+    return [[sum((m[a][c] * n[c][b] for c in span), Q()) for b in span] for a in span]
+
+
+R3 = range(3)
+
+
+class Slices:
+    """The slices of constant time in coordinates, from N, N_i and h_ij of a geometry:
+    K_ij = (h_ij' - D_i N_j - D_j N_i)/2N and the Ricci tensor of h_ij; first index up."""
+
+    def __init__(self, geo):
+        self.geo, h, up = geo, geo.h, geo.lift
+        d = lambda q, i: q.d(i + 1)
+        low = lambda i, j, k: (d(h[i][j], k) + d(h[i][k], j) - d(h[j][k], i)) * HALF
+        raised = lambda m: [[sum((up[i][k] * m[k][j] for k in R3), Q()) for j in R3] for i in R3]
+        c = [[[sum((up[i][l] * low(l, j, k) for l in R3), Q()) for k in R3] for j in R3] for i in R3]
+        shift = lambda i, j: d(geo.shift[j], i) - sum((c[k][i][j] * geo.shift[k] for k in R3), Q())
+        self.k = raised([[(h[i][j].d(0) - shift(i, j) - shift(j, i)) / (2 * geo.n) for j in R3] for i in R3])
+        ric = [[sum((d(c[k][i][j], k) - d(c[k][i][k], j)
+                     + sum((c[k][k][l] * c[l][i][j] - c[k][j][l] * c[l][i][k] for l in R3), Q())
+                     for k in R3), Q()) for j in R3] for i in R3]
+        self.ric = raised(ric)
+        self.K, self.R3 = trace(self.k), trace(self.ric)
+        self.K2 = trace(matmul(self.k, self.k))
+        self.N = geo.n / geo.lapse
+        gradient = [d(self.N, i) for i in R3]
+        along = sum((up[i][j] * geo.shift[i] * gradient[j] for i in R3 for j in R3), Q())
+        self.Vn = (self.N.d(0) - along) / geo.n
+        self.acc = [g / self.N for g in gradient]  # index down
+        self.acc_up = [sum((up[i][j] * self.acc[j] for j in R3), Q()) for i in R3]
+        self.acc2 = sum((self.acc[i] * self.acc_up[i] for i in R3), Q())
+        self.H = geo.a.d(0) / geo.a  # the rate of the cosmic and the conformal clock
+
+    def of_time(self, names):
+        return [self.geo.scalars[name] for name in names.split()]
 
 
 class Functions:
@@ -439,7 +475,44 @@ def puffin(geo, c, f):
             + f("P", geo.kinetic("chi")))
 
 
-LAGRANGIANS = {f.__name__: f for f in (lapwing, kestrel, redshank, godwit, turnstone, knot, ruff,
+def shearwater(geo, c, f):
+    s = Slices(geo)
+    g, lam, cc, m2, m3, m4, n4 = s.of_time("f Lambda c m2 m3 m4 n4")
+    dg = 1 - (s.N * s.N).inverse()
+    dk = s.K - 3 * s.H
+    dkdk = s.K2 - 2 * (s.H * s.K) + 3 * s.H ** 2
+    m = c["M"] ** 2 * HALF
+    return (m * (g * (s.R3 + s.K2 - s.K ** 2) - 2 * (g.d(0) * s.K / s.N)) - lam + cc / s.N ** 2
+            + m2 ** 4 * dg ** 2 / 2 - m3 ** 3 * dk * dg / 2 - m4 ** 2 * (dk ** 2 - dkdk) + n4 ** 2 * s.R3 * dg / 2)
+
+
+def fulmar(geo, c, f, names="Lambda c alphaT alphaH alphaK alphaB beta1 beta2 beta3"):
+    s = Slices(geo)
+    given = s.of_time(names)
+    lam, cc, t, h, k, b, b1 = given[:7]
+    b2, b3 = given[7:] or (-6 * b1 ** 2, -2 * (b1 * (2 * (1 + h) + b1 * (1 + t))))
+    dk = s.K - 3 * s.H
+    n = s.N - 1
+    return (cc / s.N ** 2 - lam + c["M"] ** 2 * HALF * (
+        s.K2 - s.K ** 2 + s.R3 * (1 + t / s.N + h * (1 - s.N.inverse())) + s.H ** 2 * k * n ** 2
+        + 4 * (s.H * b * dk * n) + 4 * (b1 * dk * s.Vn) + b2 * s.Vn ** 2 + b3 * s.acc2))
+
+
+def petrel(geo, c, f):
+    return fulmar(geo, c, f, "Lambda c alphaT alphaH alphaK alphaB beta1")
+
+
+def slices(geo, c, f):
+    """Everything that the adm form has."""
+    s = Slices(geo)
+    b, = s.of_time("b")
+    kk = matmul(s.k, s.k)
+    pulled = sum((s.acc[i] * s.k[i][j] * s.acc_up[j] for i in R3 for j in R3), Q())
+    return (f("F", s.N, s.K, s.R3, s.Vn) + b * trace(matmul(kk, s.k)) + s.N * trace(matmul(s.ric, s.k))
+            + trace(matmul(s.ric, s.ric)) + s.acc2 * s.K + pulled + b.d(0) * s.Vn * s.K2)
+
+
+LAGRANGIANS = {f.__name__: f for f in (shearwater, fulmar, petrel, slices, lapwing, kestrel, redshank, godwit, turnstone, knot, ruff,
                                        sanderling, phalarope, stilt, tern, puffin)}
 
 
