@@ -1,6 +1,8 @@
 package rules
 
 import (
+	"os"
+	"path/filepath"
 	"testing"
 
 	"remnant/parse"
@@ -80,5 +82,39 @@ func TestNoetherFails(t *testing.T) {
 		if !wrong {
 			t.Errorf("doubling term %d (%v %v) goes unnoticed", i, terms[i].U, terms[i].V)
 		}
+	}
+}
+
+// The Noether identities hold for every shipped model that names no frame of its own.
+func TestNoetherOfShippedModels(t *testing.T) {
+	files, err := filepath.Glob("../testdata/*.act")
+	if err != nil || len(files) == 0 {
+		t.Fatal("no shipped models", err)
+	}
+	checked := 0
+	for _, file := range files {
+		text, err := os.ReadFile(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		m := load(t, string(text))
+		if m.Covariant == nil {
+			continue
+		}
+		checked++
+		for _, s := range []parse.Sector{parse.ScalarSector, parse.VectorSector} {
+			ids, err := CheckGauge(m.Variant(m.Gauge, s))
+			if err != nil || len(ids) == 0 {
+				t.Errorf("%s, %s sector: %d identities, %v", file, s, len(ids), err)
+			}
+			for _, id := range ids {
+				if !id.Holds() {
+					t.Errorf("%s, %s sector: direction %s does not hold", file, s, id.Parameter)
+				}
+			}
+		}
+	}
+	if checked < 8 {
+		t.Errorf("%d covariant models were checked", checked)
 	}
 }
