@@ -18,7 +18,7 @@ type Example struct {
 	Text       string // a sentence of the production
 }
 
-// Examples returns an example for each production of the grammar, in its order.
+// Examples returns examples for each production of the grammar, in its order.
 func Examples() []Example {
 	return []Example{
 		{"File", "model \"Dunlin\"\nbackground a\nfields u\nlagrangian quadratic = a^3*u'^2/2\n"},
@@ -28,7 +28,7 @@ func Examples() []Example {
 		{"Constants", "constants M > 0, lambda, n"},
 		{"Background", "background a, phi, eps > 0"},
 		{"Symbol", "eps > 0"},
-		{"Functions", "functions V(phi) = m^2*phi^2/2, P(phi, X), f(t)"},
+		{"Functions", "functions V(phi) = m^2*phi^2/2, P(phi, X), f(t), F(t, N, K)"},
 		{"Function", "V(phi) = m^2*phi^2/2"},
 		{"Argument", "X(chi)"},
 		{"FormFactor", "formfactor F(box) = (exp(-box/M^2) - 1)/box"},
@@ -39,6 +39,8 @@ func Examples() []Example {
 		{"Gauge", "gauge unitary"},
 		{"Sector", "sector tensor"},
 		{"Lagrangian", "lagrangian quadratic = a^3*(zeta'^2 - zeta,i*zeta,i/a^2)"},
+		{"Lagrangian", "lagrangian covariant = M^2*R/2 + P(phi, X) - Q(phi, X)*box[phi]"},
+		{"Lagrangian", "lagrangian adm = M^2/2*(R3 + K.ij*K.ij - K^2) + F(t, N, K)"},
 		{"Keep", "keep v = a*zeta"},
 		{"Small", "small eps, eta to order 2"},
 		{"Numbers", "numbers M = 1, phi(0) = 27/5, phi'(0) = -1/10^6"},

@@ -1,7 +1,7 @@
 // Package rules holds what is known of perturbations about a spatially flat FLRW background:
 // the clocks, the perturbed metric with its connection and curvature to second order, the
-// gauges and sectors, and with them the expansion of a covariant Lagrangian to its background
-// equations and its quadratic form.
+// gauges and sectors, and with them the expansion of a covariant or adm Lagrangian to its
+// background equations and its quadratic form.
 //
 // The quadratic action of linear perturbations about FLRW is isotropic, so perturbations that
 // depend on time and one coordinate z fix it. Tensors are components in an orthonormal frame
