@@ -4,6 +4,8 @@ package reduce
 // equations.
 
 import (
+	"os"
+	"path/filepath"
 	"regexp"
 	"strings"
 	"testing"
@@ -63,12 +65,31 @@ const (
 // at evaluates a formula of the theory in the model's field.
 func (th theory) at(t testing.TB, m *parse.Model, formula string) field.Elem {
 	t.Helper()
-	formula = strings.ReplaceAll(strings.Join(strings.Fields(formula), " "), " X", " (phi'^2/2)")
-	return eval(t, m, kineticToken.ReplaceAllString(th.in(formula), "${1}(phi'^2/2)"))
+	formula = th.in(strings.Join(strings.Fields(formula), " "))
+	return eval(t, m, onClock(m, kineticToken.ReplaceAllString(formula, "${1}(phi'^2/2)")))
 }
 
 // kineticToken is X where it is no derivative.
 var kineticToken = regexp.MustCompile(`(^|[^,A-Za-z])X\b`)
+
+// cosmicToken is what the formulas say with cosmic time; cosmic says it on another clock.
+var (
+	cosmicToken = regexp.MustCompile(`\b(phi''|phi'|H'|H\b)`)
+	cosmic      = map[parse.Clock]map[string]string{
+		parse.Conformal: {"phi''": "((phi'/a)'/a)", "phi'": "(phi'/a)", "H'": "((H/a)'/a)", "H": "(H/a)"},
+		parse.Efolds:    {"phi''": "(H*(H*phi')')", "phi'": "(H*phi')", "H'": "(H*H')"},
+	}
+)
+
+// onClock writes a formula in cosmic time on the model's clock.
+func onClock(m *parse.Model, formula string) string {
+	return cosmicToken.ReplaceAllStringFunc(formula, func(token string) string {
+		if other, ok := cosmic[m.Clock][token]; ok {
+			return other
+		}
+		return token
+	})
+}
 
 var secondOrderTheories = []struct {
 	model string
@@ -82,51 +103,52 @@ var secondOrderTheories = []struct {
 	{"knot.act", theory{"K": "G2", "G3": "G3", "G4": "G4", "G5": "G5"}},
 }
 
-// The background equations off shell: N̄⁻¹ the lapse's is −a³ Σℰᵢ, and a third of that of ζ is
-// a³ Σ𝒫ᵢ.
+// onClocks runs a test for every theory on every clock.
+func onClocks(t *testing.T, test func(t *testing.T, th theory, m *parse.Model)) {
+	for _, tc := range secondOrderTheories {
+		for _, clock := range []string{"cosmic", "conformal", "efolds"} {
+			t.Run(tc.model+"/"+clock, func(t *testing.T) {
+				text, err := os.ReadFile(filepath.Join("..", "testdata", tc.model))
+				if err != nil {
+					t.Fatal(err)
+				}
+				test(t, tc.theory, model(t, tc.model, strings.Replace(string(text), "clock cosmic", "clock "+clock, 1)))
+			})
+		}
+	}
+}
+
+// The background equations off shell: that of A is −N̄a³ Σℰᵢ, and that of ζ is 3N̄a³ Σ𝒫ᵢ.
 func TestSecondOrderBackground(t *testing.T) {
-	for _, tc := range secondOrderTheories {
-		t.Run(tc.model, func(t *testing.T) {
-			m := load(t, tc.model)
-			energy := tc.at(t, m, "-a^3*("+kyyEnergy+")")
-			pressure := tc.at(t, m, "3*a^3*("+kyyPressure+")")
-			x, err := rules.Expand(m)
-			if err != nil {
-				t.Fatal(err)
-			}
-			same(t, "equation of A", &x.Equations[0].Value, energy)
-			same(t, "equation of ζ", &x.Equations[1].Value, pressure)
-		})
-	}
+	onClocks(t, func(t *testing.T, th theory, m *parse.Model) {
+		density := m.Lapse.Mul(m.A.Pow(3))
+		energy := th.at(t, m, kyyEnergy).Mul(density).Neg()
+		pressure := th.at(t, m, kyyPressure).Mul(density).Scale(3, 1)
+		x, err := rules.Expand(m)
+		if err != nil {
+			t.Fatal(err)
+		}
+		same(t, "equation of A", &x.Equations[0].Value, energy)
+		same(t, "equation of ζ", &x.Equations[1].Value, pressure)
+	})
 }
 
-// S = ∫a³[G_S ζ'² − F_S(∂ζ)²/a²] with G_S = ΣG_T²/Θ² + 3G_T and F_S = (1/a)(aG_T²/Θ)' − F_T.
+// Scalars, on the clocks; checkScalars has the formulas.
 func TestSecondOrderScalars(t *testing.T) {
-	for _, tc := range secondOrderTheories {
-		t.Run(tc.model, func(t *testing.T) {
-			m := load(t, tc.model)
-			r := mustReduce(t, m)
-			checkScalars(t, m, r, tc.at(t, m, kyyGT), tc.at(t, m, kyyFT), tc.at(t, m, kyySigma), tc.at(t, m, kyyTheta))
-		})
-	}
+	onClocks(t, func(t *testing.T, th theory, m *parse.Model) {
+		r := mustReduce(t, m)
+		checkScalars(t, m, r, th.at(t, m, kyyGT), th.at(t, m, kyyFT), th.at(t, m, kyySigma), th.at(t, m, kyyTheta))
+	})
 }
 
-// S = ⅛∫a³[G_T γ'_ij² − F_T(∂γ_ij)²/a²] for tensors, with two polarisations; vectors do not
-// propagate. The same paper, section 4.1. For the canonical field it is a³M²/8.
+// S = ⅛∫dt a³[G_T γ'_ij² − F_T(∂γ_ij)²/a²] for tensors, with two polarisations; vectors do not
+// propagate. The same paper, section 4. For the canonical field it is a³M²/8.
 func TestSecondOrderTensorsAndVectors(t *testing.T) {
-	for _, tc := range secondOrderTheories {
-		t.Run(tc.model, func(t *testing.T) {
-			m := load(t, tc.model)
-			r := mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
-			if r.DegreesOfFreedom != 2 {
-				t.Fatalf("%d degrees of freedom, want two polarisations", r.DegreesOfFreedom)
-			}
-			same(t, "kinetic", r.Single.Kinetic, tc.at(t, m, "a^3/4*"+kyyGT))
-			same(t, "gradient", r.Single.Gradient, tc.at(t, m, "a/4*"+kyyFT))
-			same(t, "mass", r.Single.Mass, field.Elem{})
-			noVectors(t, m)
-		})
-	}
+	onClocks(t, func(t *testing.T, th theory, m *parse.Model) {
+		r := mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
+		checkTensors(t, m, r, th.at(t, m, kyyGT), th.at(t, m, kyyFT))
+		noVectors(t, m)
+	})
 }
 
 // z² = a²(ρ + p)/(c_s²H²) with c_s² = P,X/(P,X + 2X P,XX), Garriga, Mukhanov 1999,
@@ -145,7 +167,7 @@ func substituted(d oper.Oper, e field.Elem) oper.Oper { return oper.New(e).Mul(d
 // (Maldacena 2003, astro-ph/0210603, section 2; Weinberg 2008, Cosmology, section 5.4): one
 // operator in all three gauges.
 func TestGaugesAgree(t *testing.T) {
-	for _, name := range []string{"lapwing.act", "kestrel.act", "redshank.act", "ruff.act"} {
+	for _, name := range []string{"lapwing.act", "kestrel.act", "redshank.act", "ruff.act", "godwit.act", "turnstone.act"} {
 		t.Run(name, func(t *testing.T) {
 			m := load(t, name)
 			unitary := mustReduce(t, m)
@@ -238,9 +260,7 @@ func TestGaussBonnet(t *testing.T) {
 			gt, ft := eval(t, m, gaussBonnetGT), eval(t, m, gaussBonnetFT)
 			sigma, theta := eval(t, m, gaussBonnetSigma), eval(t, m, gaussBonnetTheta)
 			checkScalars(t, m, r, gt, ft, sigma, theta)
-			r = mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
-			same(t, "kinetic of tensors", r.Single.Kinetic, gt.Mul(m.A.Pow(3)).Scale(1, 4))
-			same(t, "gradient of tensors", r.Single.Gradient, ft.Mul(m.A).Scale(1, 4))
+			checkTensors(t, m, mustReduce(t, m.Variant(m.Gauge, parse.TensorSector)), gt, ft)
 			noVectors(t, m)
 		})
 	}
@@ -269,7 +289,8 @@ func TestCurvatureFunction(t *testing.T) {
 	same(t, "kinetic", r.Single.Kinetic, q.Mul(m.A.Pow(3)))
 	same(t, "gradient", r.Single.Gradient, q.Mul(m.A))
 	same(t, "mass", r.Single.Mass, field.Elem{})
-	curvatureTensors(t, m)
+	checkTensors(t, m, mustReduce(t, m.Variant(m.Gauge, parse.TensorSector)), eval(t, m, "f,R"), eval(t, m, "f,R"))
+	noVectors(t, m)
 	for _, g := range []parse.Gauge{parse.Flat, parse.Newtonian} {
 		r := mustReduce(t, m.Variant(g, parse.ScalarSector))
 		if r.DegreesOfFreedom != 1 {
@@ -278,17 +299,6 @@ func TestCurvatureFunction(t *testing.T) {
 		}
 		same(t, "sound speed squared", r.Single.SoundSpeed2, m.K.Int(1))
 	}
-}
-
-func curvatureTensors(t *testing.T, m *parse.Model) {
-	t.Helper()
-	r := mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
-	if r.DegreesOfFreedom != 2 {
-		t.Errorf("tensors: %d degrees of freedom, want 2", r.DegreesOfFreedom)
-	}
-	same(t, "kinetic of tensors", r.Single.Kinetic, eval(t, m, "a^3*f,R/4"))
-	same(t, "gradient of tensors", r.Single.Gradient, eval(t, m, "a*f,R/4"))
-	noVectors(t, m)
 }
 
 // f(R, φ)/2 + ω(φ)X: the background equations of Hwang, Noh 1996, Phys. Rev. D 54, 1460, as in De
@@ -314,7 +324,8 @@ func TestCurvatureFunctionOfField(t *testing.T) {
 			t.Fatalf("%v gauge: %d degrees of freedom, want 2", g, r.DegreesOfFreedom)
 		}
 	}
-	curvatureTensors(t, m)
+	checkTensors(t, m, mustReduce(t, m.Variant(m.Gauge, parse.TensorSector)), eval(t, m, "f,R"), eval(t, m, "f,R"))
+	noVectors(t, m)
 }
 
 // fieldSpace is the quadratic form of the scalars of S = ∫√−g[M²R/2 − ½G_IJ∂φᴵ∂φᴶ − V] in the flat
@@ -427,10 +438,7 @@ func TestScalarAndFluid(t *testing.T) {
 			same(t, "coefficient of the sound speeds", &r.Several.SoundSpeeds[i], want)
 		}
 	}
-	r := mustReduce(t, m.Variant(m.Gauge, parse.TensorSector))
-	if r.DegreesOfFreedom != 2 {
-		t.Errorf("tensors: %d degrees of freedom, want 2", r.DegreesOfFreedom)
-	}
+	checkTensors(t, m, mustReduce(t, m.Variant(m.Gauge, parse.TensorSector)), eval(t, m, "M^2"), eval(t, m, "M^2"))
 	noVectors(t, m)
 }
 
@@ -442,17 +450,61 @@ func noVectors(t *testing.T, m *parse.Model) {
 	}
 }
 
-// checkScalars compares with S = ∫a³[G_S ζ'² − F_S(∂ζ)²/a²], G_S = ΣG_T²/Θ² + 3G_T and
-// F_S = (1/a)(aG_T²/Θ)' − F_T.
+// checkTensors compares with S = ⅛∫dt a³[G_T γ'_ij² − F_T(∂γ_ij)²/a²].
+func checkTensors(t *testing.T, m *parse.Model, r *Result, gt, ft field.Elem) {
+	t.Helper()
+	if r.DegreesOfFreedom != 2 {
+		t.Fatalf("tensors: %d degrees of freedom, want two polarisations", r.DegreesOfFreedom)
+	}
+	same(t, "kinetic of tensors", r.Single.Kinetic, gt.Mul(m.A.Pow(3)).Div(m.Lapse).Scale(1, 4))
+	same(t, "gradient of tensors", r.Single.Gradient, ft.Mul(m.A).Mul(m.Lapse).Scale(1, 4))
+	same(t, "mass of tensors", r.Single.Mass, field.Elem{})
+}
+
+// checkScalars compares with S = ∫dt a³[G_S ζ'² − F_S(∂ζ)²/a²], G_S = ΣG_T²/Θ² + 3G_T and
+// F_S = (1/a) d(aG_T²/Θ)/dt − F_T.
 func checkScalars(t *testing.T, m *parse.Model, r *Result, gt, ft, sigma, theta field.Elem) {
 	t.Helper()
 	if r.DegreesOfFreedom != 1 || r.Variable != "zeta" {
 		t.Fatalf("%d degrees of freedom in %q, want 1 in ζ", r.DegreesOfFreedom, r.Variable)
 	}
 	gs := sigma.Mul(gt.Pow(2)).Div(theta.Pow(2)).Add(gt.Scale(3, 1))
-	fs := m.A.Mul(gt.Pow(2)).Div(theta).D().Div(m.A).Sub(ft)
-	same(t, "kinetic", r.Single.Kinetic, gs.Mul(m.A.Pow(3)).Scale(2, 1))
-	same(t, "gradient", r.Single.Gradient, fs.Mul(m.A).Scale(2, 1))
+	fs := m.A.Mul(gt.Pow(2)).Div(theta).D().Div(m.Lapse).Div(m.A).Sub(ft)
+	same(t, "kinetic", r.Single.Kinetic, gs.Mul(m.A.Pow(3)).Div(m.Lapse).Scale(2, 1))
+	same(t, "gradient", r.Single.Gradient, fs.Mul(m.A).Mul(m.Lapse).Scale(2, 1))
 	same(t, "mass", r.Single.Mass, field.Elem{})
 	same(t, "sound speed squared", r.Single.SoundSpeed2, fs.Div(gs))
+}
+
+// The second Noether identities of every shipped covariant model, scalar and vector sector.
+func TestNoetherOfShippedModels(t *testing.T) {
+	files, err := filepath.Glob(filepath.Join("..", "testdata", "*.act"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	checked := 0
+	for _, file := range files {
+		m := load(t, filepath.Base(file))
+		if m.Covariant == nil {
+			continue
+		}
+		checked++
+		for _, sector := range []parse.Sector{parse.ScalarSector, parse.VectorSector} {
+			ids, err := rules.CheckGauge(m.Variant(m.Gauge, sector))
+			if err != nil {
+				t.Fatalf("%s: %v", file, err)
+			}
+			if len(ids) == 0 {
+				t.Errorf("%s, %v sector: nothing was checked", file, sector)
+			}
+			for _, id := range ids {
+				if !id.Holds() {
+					t.Errorf("%s: the identity of %s fails: %v is left", file, id.Parameter, id.Left)
+				}
+			}
+		}
+	}
+	if checked < 12 {
+		t.Errorf("%d covariant models, want all that are shipped", checked)
+	}
 }
