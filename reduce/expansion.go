@@ -87,10 +87,6 @@ func (g *GaugeCheck) Holds() bool {
 func products(s System) []Product {
 	var out []Product
 	for _, t := range lagrangian(s) {
-		u, v, i, j := t.a, t.b, t.i, t.j
-		if s.carries(u, i, v, j) {
-			u, v, i, j = v, u, j, i
-		}
 		c := t.c.Lowest()
 		split, ok := show.Laplacians(c)
 		if !ok {
@@ -98,7 +94,11 @@ func products(s System) []Product {
 		}
 		for n, c := range split {
 			if c = c.Lowest(); !c.IsZero() {
-				out = append(out, Product{c, u, v, i, j, n})
+				p := Product{c, t.a, t.b, t.i, t.j, n}
+				if s.carries(p) {
+					p = Product{c, t.b, t.a, t.j, t.i, n}
+				}
+				out = append(out, p)
 			}
 		}
 	}
@@ -120,21 +120,21 @@ func b2i(b bool) int {
 	return 0
 }
 
-// carries says of two unlike fields whether the first, not the second, takes the Laplacians:
-// a potential of the shift or of the slices' shear, else the field that is differentiated less
-// by time, else the later one.
-func (s System) carries(u, i, v, j int) bool {
-	if u == v {
-		return false
-	}
+// carries says of two unlike fields whether the first, not the second, is written behind. That
+// is where the Laplacians act, if there are any: on a potential of the shift or of the slices'
+// shear, else on the field that is differentiated less by time, else on the later one. Without
+// Laplacians the field with more time derivatives stands behind.
+func (s System) carries(p Product) bool {
 	potential := func(n int) bool { return s.Names[n] == "B" || s.Names[n] == "E" }
 	switch {
-	case potential(u) != potential(v):
-		return potential(u)
-	case i != j:
-		return i < j
+	case p.U == p.V:
+		return false
+	case p.Laplacians > 0 && potential(p.U) != potential(p.V):
+		return potential(p.U)
+	case p.UOrder != p.VOrder:
+		return p.UOrder < p.VOrder == (p.Laplacians > 0)
 	}
-	return u > v
+	return p.U > p.V
 }
 
 // LagrangianNode lays out the Lagrangian.

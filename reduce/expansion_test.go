@@ -32,7 +32,7 @@ func quadraticFile(d *ExpansionDocument, source, keep string) string {
 // TestPrintedLagrangianReadsBack reduces the printed quadratic Lagrangian, with the printed
 // relations given, and compares with the covariant model: the same operator remains.
 func TestPrintedLagrangianReadsBack(t *testing.T) {
-	for _, name := range []string{"kestrel", "lapwing", "redshank", "ruff", "sanderling", "tern", "shearwater"} {
+	for _, name := range []string{"kestrel", "lapwing", "redshank", "ruff", "sanderling", "tern", "puffin", "shearwater", "petrel", "godwit"} {
 		t.Run(name, func(t *testing.T) {
 			m := load(t, name+".act")
 			x, err := new(Variants).Expand(m)

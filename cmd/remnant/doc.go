@@ -5,6 +5,7 @@ the one operator that remains.
 Usage:
 
 	remnant reduce FILE [flags]
+	remnant expand FILE [flags]
 	remnant tidy FILE… [-w | --check]
 	remnant notation
 	remnant code FILE -o DIR
@@ -29,6 +30,15 @@ the equation of motion and the canonical variable. The flags are:
 	--full
 		Write out expressions that are long and follow from others on the page. JSON
 		always holds them.
+	--gauge unitary|flat|newtonian|open
+	--sector scalar|vector|tensor|all
+		Take a covariant or adm model in another gauge or sector than its own, or in
+		all sectors, on one page. An open gauge, in which nothing is set to zero, is for
+		expand. An adm model takes the unitary gauge only.
+	--check gauge
+		Verify the Noether identities of the expanded action and print them: before
+		the gauge is fixed it does not change under a change of coordinates. The exit
+		status is 1 if one fails.
 	--series ORDER
 		Expand what remains in powers of the wave number on large and on small scales,
 		and in the parameters that the model declares small. Without the flag a model
@@ -51,6 +61,17 @@ the equation of motion and the canonical variable. The flags are:
 	--limit-time D
 		Stop after the time D (10m; 0 is no limit).
 
+# expand
+
+Expand prints what a covariant or adm action is at second order, before anything is
+eliminated: the gauge and how the metric is perturbed, the background equations as they are
+derived, from which perturbation each comes and what it is solved for, and the quadratic
+Lagrangian, up to total derivatives. Long factors of its coefficients get names, listed below
+it; --full writes them in their places. A quadratic model has nothing to expand; its relations
+and its Lagrangian are printed. Expand takes --format, --gauge, --sector, --check, -o, --ascii,
+--width, --limit-terms and --limit-time as reduce does. Its JSON is documented at the type
+ExpansionDocument of package reduce; the Lagrangian in it can be read back.
+
 # tidy
 
 Tidy prints files in the standard layout of the notation. Comments stay where they are.
@@ -70,7 +91,7 @@ derivatives by the clock, the mode equation, and a test with exact expectations.
 # Exit status
 
 	0   done
-	1   a check failed: a file is not in its standard layout
+	1   a check failed: a file is not in its standard layout, or an action is not invariant
 	2   the input was refused
 	3   a limit was reached, or the run was interrupted; the message names the stage
 	70  a fault of the program; please report it together with the model

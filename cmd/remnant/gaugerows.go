@@ -57,11 +57,10 @@ func gaugePhrase(m *parse.Model) phrase {
 	case m.ADM != nil:
 		return join(", ", words(name), zero("E"))
 	}
-	first := "dR"
 	if s := m.Scalars(); len(s) > 0 {
-		first = "d" + m.K.Info(s[0]).Name
+		return join(", ", words(name), zero("d"+m.K.Info(s[0]).Name, "E"))
 	}
-	return join(", ", words(name), zero(first, "E"))
+	return join("", words(name+", δR = "), zero("E"))
 }
 
 // perturbedRow says how lapse, shift, slices and scalars are perturbed.

@@ -22,21 +22,22 @@ func readFile(t *testing.T, name string) string {
 	return string(data)
 }
 
-func TestReadmeShowsThePage(t *testing.T) {
-	var out, errs bytes.Buffer
-	path := filepath.Join("..", "..", "testdata", "plover.act")
-	if got := run([]string{"reduce", path}, streams{in: strings.NewReader(""), out: &out, err: &errs}); got != statusDone {
-		t.Fatalf("exit status %d: %s", got, errs.String())
-	}
-	if !strings.Contains(readFile(t, "README.md"), "```\n"+out.String()+"```\n") {
-		t.Errorf("README.md does not show what is printed:\n%s", out.String())
-	}
-}
-
-func TestReadmeShowsTheModel(t *testing.T) {
-	block := "```\n" + regexp.MustCompile(` +#.*`).ReplaceAllString(readFile(t, "testdata/plover.act"), "") + "```\n"
-	if !strings.Contains(readFile(t, "README.md"), block) {
-		t.Errorf("README.md does not show the model without its comments:\n%s", block)
+// The pages and models that README.md shows are those that are printed and shipped.
+func TestReadmeShowsThePages(t *testing.T) {
+	readme := readFile(t, "README.md")
+	for _, page := range []struct{ command, model string }{{"reduce", "plover.act"}, {"expand", "kestrel.act"}} {
+		var out, errs bytes.Buffer
+		path := filepath.Join("..", "..", "testdata", page.model)
+		if got := run([]string{page.command, path}, streams{in: strings.NewReader(""), out: &out, err: &errs}); got != statusDone {
+			t.Fatalf("exit status %d: %s", got, errs.String())
+		}
+		if !strings.Contains(readme, "```\n"+out.String()+"```\n") {
+			t.Errorf("README.md does not show what is printed:\n%s", out.String())
+		}
+		block := "```\n" + regexp.MustCompile(` +#.*`).ReplaceAllString(readFile(t, filepath.Join("testdata", page.model)), "") + "```\n"
+		if !strings.Contains(readme, block) {
+			t.Errorf("README.md does not show the model without its comments:\n%s", block)
+		}
 	}
 }
 

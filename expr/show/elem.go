@@ -7,6 +7,7 @@ import (
 	"cmp"
 	"math/big"
 	"slices"
+	"strings"
 
 	"remnant/expr/field"
 	"remnant/expr/poly"
@@ -29,7 +30,7 @@ func Generator(f *field.Field, g field.Gen) Node {
 	in := f.Info(g)
 	switch in.Kind {
 	case field.FreeFunction:
-		return symbol{name: in.Name, by: derivativeNames(in)}
+		return symbol{name: in.Name, by: derivativeNames(in), oneX: hasOneX(in.Fn.ArgNames)}
 	case field.Root, field.Elementary:
 		if in.Name == "cos" {
 			return call{"cos", Elem(in.Angle)}
@@ -37,6 +38,30 @@ func Generator(f *field.Field, g field.Gen) Node {
 		return call{in.Name, Elem(in.Arg)}
 	}
 	return symbol{name: in.Name, primes: in.Order}
+}
+
+// hasOneX reports whether just one argument is of the form X(phi).
+func hasOneX(args []string) bool {
+	n := 0
+	for _, arg := range args {
+		if strings.HasPrefix(arg, "X(") {
+			n++
+		}
+	}
+	return n == 1
+}
+
+// argument is a name by which a function is differentiated, as readers know it: X(chi) is
+// X where there is no other X, and else X_chi.
+func (s symbol) argument(name string) string {
+	scalar, ok := strings.CutPrefix(name, "X(")
+	switch {
+	case !ok:
+		return name
+	case s.oneX:
+		return "X"
+	}
+	return "X_" + strings.TrimSuffix(scalar, ")")
 }
 
 func derivativeNames(in field.Info) []string {

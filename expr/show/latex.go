@@ -116,7 +116,7 @@ func (w *latexWriter) symbol(s symbol) {
 	if len(s.by) > 0 {
 		index += ","
 		for _, arg := range s.by {
-			t, i := latexName(arg)
+			t, i := latexName(s.argument(arg))
 			if i != "" {
 				t += "_{" + i + "}"
 			}

@@ -20,11 +20,13 @@ type (
 	// number is a natural number.
 	number struct{ n *big.Int }
 	// symbol is a name with time derivatives, or a free function's derivative by the
-	// arguments named in by.
+	// arguments named in by. If oneX, the function has one argument of the form X(phi), which
+	// readers know as X.
 	symbol struct {
 		name   string
 		primes int
 		by     []string
+		oneX   bool
 	}
 	// sum is what its terms add to; a term that is a negation is subtracted.
 	sum struct{ terms []Node }

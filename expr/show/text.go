@@ -149,7 +149,7 @@ func (d *unicodeDialect) name(s symbol) string {
 	}
 	text += ","
 	for i, arg := range s.by {
-		name, single := unicodeName(arg)
+		name, single := unicodeName(s.argument(arg))
 		if i > 0 && !single {
 			text += ","
 		}
@@ -238,6 +238,9 @@ func (*asciiDialect) enterCall(int)              {}
 func (*asciiDialect) name(s symbol) string {
 	text := s.name + strings.Repeat("'", s.primes)
 	for _, arg := range s.by {
+		if s.oneX {
+			arg = s.argument(arg) // the notation, too, knows X(phi) as X where there is but one
+		}
 		text += "," + arg
 	}
 	return text
