@@ -249,3 +249,11 @@ func TestVelocityOfTheLapse(t *testing.T) {
 		t.Errorf("%d degrees of freedom without the degeneracy, want 2", r.DegreesOfFreedom)
 	}
 }
+
+// General relativity without matter is invariant under a change of time, whatever the form.
+func TestGaugeDirectionOfADM(t *testing.T) {
+	d := refusal(t, "constants M > 0\nbackground a\nlagrangian adm = M^2/2*(R3 + K.ij*K.ij - K^2)\n")
+	if d.Kind != GaugeDirection || !strings.Contains(d.Hint, "an operator in N, K or R3 is needed") {
+		t.Errorf("%v: %s; %s", d.Kind, d.Summary, d.Hint)
+	}
+}

@@ -80,6 +80,9 @@ func gaugeDiagnostic(m *parse.Model, err error) error {
 	if m.Gauge == parse.Open && (m.Covariant != nil || m.ADM != nil) {
 		at, hint = m.GaugeSpan, "an open gauge is for 'remnant expand'; unitary, flat and newtonian can be reduced"
 	}
+	if m.ADM != nil && m.Gauge != parse.Open {
+		hint = "an operator in N, K or R3 is needed that depends on this combination of the perturbations"
+	}
 	return diag.List{{
 		Kind: GaugeDirection, Source: m.Source, Span: at,
 		Summary: "the action has a gauge direction, " + strings.Join(parts, ", ") + ": its matrix is singular for every k",

@@ -102,16 +102,17 @@ func (f *frame) sliceRicci() tensor {
 // admRank orders what may lead among the background equations of an adm model: functions of
 // time that enter them undifferentiated, then functions of time and of the slices, by less
 // derivatives first, then H⁽ⁿ⁾ and the rest as elsewhere, with functions of the slices alone where
-// undifferentiated functions stand. What depends on time by itself can be chosen for any history
+// undifferentiated functions stand, and last the other functions of time. What depends on time by itself can be chosen for any history
 // H(t); in the effective theory of inflation these are Λ(t) and c(t) (Cheung et al. 2008,
 // arXiv:0709.0293), for a general L(t, N, K) they are L and L,N.
 func (x *expansion) admRank(g field.Gen, eqs []Equation) []int {
 	in := x.m.K.Info(g)
 	switch {
 	case in.Kind == field.Function && in.Order == 0 && in.Name != "a" && in.Name != "H" && in.Name != "t":
-		if !x.moves(g, eqs) {
-			return []int{7, 0, -int(g)}
+		if x.moves(g, eqs) {
+			return []int{0, 0, -int(g)}
 		}
+		return []int{7, 0, -int(g)}
 	case in.Kind == field.FreeFunction:
 		d := dependenceOf(in)
 		switch {

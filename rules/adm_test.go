@@ -179,6 +179,8 @@ func TestLeadersOfADM(t *testing.T) {
 			"Λ and c are functions of time that enter undifferentiated", []string{"Lambda", "c"}},
 		{"time-dependent coupling", "background a, f, Lambda, c\nlagrangian adm = f*(R3 + K.ij*K.ij - K^2) - Lambda + c/N^2\n",
 			"f enters the equation of ζ with its derivative and does not lead", []string{"Lambda", "c"}},
+		{"last resort", "background a, b\nfunctions F(t, K, Vn, b)\nlagrangian adm = F,Vn*Vn + b/N\n",
+			"b' stands in the equation of A, and nothing but b in that of ζ", []string{"H'", "b"}},
 		{"functions of t", "background a\nfunctions L(t), c(t)\nlagrangian adm = R3 + K.ij*K.ij - K^2 - L + c/N^2\n",
 			"functions L(t) are as functions of time", []string{"L", "c"}},
 		{"general Lagrangian", "background a\nfunctions F(t, N, K)\nlagrangian adm = R3 + K.ij*K.ij - K^2 + F\n",
