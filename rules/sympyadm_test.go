@@ -59,6 +59,9 @@ func TestVariationsOfADM(t *testing.T) {
 	var cases []*variation
 	for _, sector := range []parse.Sector{parse.ScalarSector, parse.VectorSector, parse.TensorSector} {
 		for _, clock := range []parse.Clock{parse.Cosmic, parse.Conformal} {
+			if clock != parse.Cosmic && sector != parse.ScalarSector {
+				continue // the scalars show what a clock does
+			}
 			v := r.background(clock)
 			v.Fields = map[string]taylor{}
 			for _, name := range parse.Perturbations(parse.Unitary, sector, nil) {
