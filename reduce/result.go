@@ -27,6 +27,7 @@ type Result struct {
 	Single           *Single
 	Several          *Several
 	Stability        []Statement
+	Abbreviations    []Abbreviation     // those that Abbreviated put in
 	Assumptions      []field.Assumption // all that was assumed, from the model's own text on
 }
 

@@ -44,6 +44,9 @@ func (f *findings) long(es ...field.Elem) bool {
 
 // pageOf writes the page.
 func pageOf(f *findings) *page {
+	short := *f
+	short.Result = f.Result.Abbreviated()
+	f = &short
 	p := &page{title: titleOf(f.Model), head: f.head()}
 	for _, s := range []*section{f.solved(), f.remains(), f.series(), f.atPoint(), checkSection(f.check)} {
 		if s != nil {
@@ -69,7 +72,15 @@ func titleOf(m *parse.Model) string {
 
 func (f *findings) head() []row {
 	rows := append([]row{clockRow(f.Model.Clock)}, variantRows(f.Model)...)
-	return append(rows, conditionRows(f.Model.K, f.Assumptions)...)
+	rows = append(rows, conditionRows(f.Model.K, f.Assumptions)...)
+	var lets []phrase
+	for _, l := range f.Abbreviations {
+		lets = append(lets, compare(show.Symbol(l.Name, 0), equals, show.Elem(l.Value)))
+	}
+	if len(lets) > 0 {
+		rows = append(rows, row{label: words("let"), value: join(",  ", lets...)})
+	}
+	return rows
 }
 
 func clockRow(c parse.Clock) row {
