@@ -464,6 +464,19 @@ def stilt(geo, c, f):
     return c["M"] ** 2 * geo.R / 2 - c["Lambda"] + c["alpha"] * geo.R * geo.R + c["beta"] * geo.weyl_squared()
 
 
+# In the gauge with R uniform, f(R) is f + f_R (R - Rbar) at Rbar, the auxiliary scalar's value.
+
+def sanderling_unitary(geo, c, f):
+    bar = Q(geo.R.b)
+    return (f("f", bar) + f("f", bar, by=0) * (geo.R - bar)) / 2
+
+
+def stilt_unitary(geo, c, f):
+    bar = Q(geo.R.b)
+    square = bar * bar + 2 * bar * (geo.R - bar)
+    return c["M"] ** 2 * geo.R / 2 - c["Lambda"] + c["alpha"] * square + c["beta"] * geo.weyl_squared()
+
+
 def tern(geo, c, f):
     phi, chi = geo.scalars["phi"], geo.scalars["chi"]
     return (c["M"] ** 2 * geo.R / 2 + geo.kinetic("phi") + f("f", phi) * geo.kinetic("chi")
@@ -513,7 +526,7 @@ def slices(geo, c, f):
 
 
 LAGRANGIANS = {f.__name__: f for f in (shearwater, fulmar, petrel, slices, lapwing, kestrel, redshank, godwit, turnstone, knot, ruff,
-                                       sanderling, phalarope, stilt, tern, puffin)}
+                                       sanderling, sanderling_unitary, phalarope, stilt, stilt_unitary, tern, puffin)}
 
 
 def main():
