@@ -274,6 +274,9 @@ func (e *elaborator) tensorIndexed(n *Index) Tensor {
 	if ok {
 		rank = tensorRank[name.Name]
 	}
+	if v, ok := e.formValue(n); ok {
+		return &TensorValue{node{n.At}, v}
+	}
 	label, isName := n.Label.(*Name)
 	if rank == 0 || !isName {
 		if x, ok := n.X.(*Name); ok {
@@ -313,6 +316,9 @@ func (e *elaborator) tensorCall(n *Call) Tensor {
 	if s := e.callee(n); s != nil {
 		return e.tensorFunction(n)
 	}
+	if v, ok := e.formValue(n); ok {
+		return &TensorValue{node{n.At}, v}
+	}
 	name, ok := n.Fun.(*Name)
 	if ok && slices.Contains(elementaryNames, name.Name) && len(n.Args) == 1 {
 		x := e.tensor(n.Args[0])
@@ -340,6 +346,9 @@ func (e *elaborator) tensorCall(n *Call) Tensor {
 func (e *elaborator) tensorApply(n *Apply) Tensor {
 	x := e.tensor(n.X)
 	e.onlyScalarHere(x, n.X, "square brackets")
+	if f, ok := e.tensorForm(n, x); ok {
+		return f
+	}
 	return &TensorBox{node{n.At}, e.boxPowers(n.Operator), x}
 }
 
@@ -379,16 +388,16 @@ func (e *elaborator) boxPowers(x Expr) []field.Elem {
 				p = []field.Elem{e.inverse(p[0], f.X, "")}
 			}
 			out = mulPowers(out, p)
-			e.limitOrder(len(out), n.At)
+			e.limitOrder(2*(len(out)-1), n.At)
 		}
 		return out
 	case *Power:
 		base, r := e.boxPowers(n.Base), e.exponent(n.Exponent)
-		if r.IsInt() && r.Sign() >= 0 && r.Num().IsInt64() && r.Num().Int64() <= maxOrder {
+		if r.IsInt() && r.Sign() >= 0 && r.Num().IsInt64() && (len(base) > 1 || r.Num().Int64() <= maxOrder) {
 			out := []field.Elem{e.k.Int(1)}
 			for range r.Num().Int64() {
 				out = mulPowers(out, base)
-				e.limitOrder(len(out), n.At)
+				e.limitOrder(2*(len(out)-1), n.At)
 			}
 			return out
 		}

@@ -61,12 +61,7 @@ func (e *elaborator) declarations(s *Statement) {
 			}
 		}
 	case s.FormFactor != nil:
-		e.declare(&s.FormFactor.Word, symbolFormFactor, s.At.End)
-		if r := s.FormFactor.Rule; r != nil {
-			if f := oneOf(&r.Of, []string{s.FormFactor.Word.Text}); f != nil {
-				e.report(f)
-			}
-		}
+		e.declareFormFactor(s)
 	case s.Let != nil:
 		if sym := e.declare(&s.Let.Word, symbolLet, s.At.End); sym != nil {
 			sym.let = s.Let

@@ -69,7 +69,7 @@ func (e *elaborator) eval(x Expr) form {
 	case *Deriv:
 		return e.evalDeriv(n)
 	case *Index:
-		panic(e.indexed(n))
+		return e.evalIndexed(n)
 	case *Call:
 		return e.evalCall(n)
 	case *Apply:
@@ -119,6 +119,14 @@ func (e *elaborator) evalName(n *Name) form {
 
 func (e *elaborator) formFactor(x Expr) *fault {
 	return newFault(diag.NotYetSupported, x.Span(), fmt.Sprintf("'%s' is a form factor, which is not yet supported", brief(x)), "powers of box can be used: box^2[zeta]")
+}
+
+// evalIndexed is the Taylor coefficient of a form factor; nothing else takes a dot here.
+func (e *elaborator) evalIndexed(n *Index) form {
+	if v, ok := e.formValue(n); ok {
+		return background(v, n.At)
+	}
+	panic(e.indexed(n))
 }
 
 func (e *elaborator) indexed(n *Index) *fault {

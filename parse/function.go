@@ -132,6 +132,9 @@ func (e *elaborator) evalCall(n *Call) form {
 		e.checkArguments(n, s)
 		return e.eval(n.Fun)
 	}
+	if v, ok := e.formValue(n); ok {
+		return background(v, n.At)
+	}
 	name, isName := n.Fun.(*Name)
 	if isName {
 		for _, f := range elementaryNames {

@@ -90,7 +90,9 @@ func (e *elaborator) free(x Expr) []use {
 	case *Apply:
 		return e.free(n.X)
 	case *Index:
-		panic(e.indexed(n))
+		if e.formSymbol(n.X) == nil {
+			panic(e.indexed(n))
+		}
 	}
 	return nil
 }

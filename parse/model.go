@@ -37,6 +37,8 @@ type Model struct {
 	Relations  []RelationDecl // in the order of the numbers that K knows them by
 	Lets       []Let
 
+	FormFactors []*FormFactorDecl
+
 	Quadratic      []Term // the Lagrangian of the quadratic form
 	Covariant      Tensor // the Lagrangian of the covariant form; nil in the others
 	ADM            Tensor // the Lagrangian of the adm form; nil in the others

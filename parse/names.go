@@ -41,7 +41,8 @@ type symbol struct {
 	index  int         // field
 	let    *Definition // let
 	value  *form       // let: what it stands for, once the relations are complete
-	broken bool        // its declaration was refused; uses are passed over in silence
+	form   *FormFactorDecl
+	broken bool // its declaration was refused; uses are passed over in silence
 }
 
 // elementaryNames are the functions of the notation.

@@ -61,6 +61,12 @@ type (
 		Powers []field.Elem
 		X      Tensor
 	}
+	// TensorForm is a form factor F(□) acting on X.
+	TensorForm struct {
+		node
+		Form *FormFactorDecl
+		X    Tensor
+	}
 	// TensorSum is a sum.
 	TensorSum struct {
 		node
