@@ -134,7 +134,7 @@ func leadFactors(eq rules.Equation) []field.Elem {
 
 // quadraticSection is the quadratic action.
 func quadraticSection(x *reduce.Expanded, full bool) section {
-	s := section{heading: words("Second order, before anything is eliminated")}
+	s := section{heading: words("Second order, up to total derivatives, before anything is eliminated")}
 	if !expandable(x.Model) {
 		s.heading = words("Quadratic action")
 		s.blocks = append(s.blocks, block{sentence: words("The Lagrangian is quadratic as it stands, and there is nothing to expand. Up to total derivatives it is:")})

@@ -5,7 +5,6 @@ package main
 
 import (
 	"slices"
-	"strings"
 
 	"remnant/expr/show"
 	"remnant/parse"
@@ -68,34 +67,48 @@ func perturbedRow(m *parse.Model) row {
 	has := func(name string) bool {
 		return slices.ContainsFunc(m.Fields, func(f parse.FieldDecl) bool { return f.Name == name })
 	}
-	var parts []string
+	var parts []phrase
+	one := show.Sum(show.Int(1), show.Symbol("A", 0))
+	lapse := map[parse.Clock]show.Node{
+		parse.Cosmic: one, parse.Conformal: show.Product(show.Symbol("a", 0), one), parse.Efolds: show.Quotient(one, show.Symbol("H", 0)),
+	}
 	if has("A") {
-		parts = append(parts, "lapse "+[...]string{parse.Cosmic: "1 + A", parse.Conformal: "a(1 + A)", parse.Efolds: "(1 + A)/H"}[m.Clock])
+		parts = append(parts, join("", words("lapse "), maths(lapse[m.Clock])))
 	}
 	switch {
 	case has("B"):
-		parts = append(parts, "shift ∂B")
+		parts = append(parts, join("", words("shift ∂"), maths(show.Symbol("B", 0))))
 	case has("S"):
-		parts = append(parts, "shift S")
+		parts = append(parts, join("", words("shift "), maths(show.Symbol("S", 0))))
 	}
-	var slice []string
-	for _, x := range []struct{ name, text string }{{"zeta", "2ζ"}, {"E", "2∂∂E"}, {"gamma", "γ"}} {
-		if has(x.name) {
-			slice = append(slice, x.text)
-		}
-	}
-	switch {
-	case slice != nil:
-		parts = append(parts, "metric of the slices a² exp("+strings.Join(slice, " + ")+")")
-	case has("W"):
-		parts = append(parts, "metric of the slices a²(1 + 2∂W + …), ∂W symmetrised")
-	default:
-		parts = append(parts, "metric of the slices a²")
-	}
+	parts = append(parts, join("", words("metric of the slices "), slicesPhrase(has)))
 	for _, s := range m.Scalars() {
 		if name := m.K.Info(s).Name; has("d" + name) {
-			parts = append(parts, show.UnicodeName(name)+" + "+show.UnicodeName("d"+name))
+			parts = append(parts, maths(show.Sum(show.Symbol(name, 0), show.Symbol("d"+name, 0))))
 		}
 	}
-	return row{label: words("perturbed"), value: words(strings.Join(parts, ", "))}
+	return row{label: words("perturbed"), value: list(parts)}
+}
+
+// slicesPhrase is the metric of the slices, a² times the exponential of a matrix; numbers in
+// it stand for multiples of the identity.
+func slicesPhrase(has func(string) bool) phrase {
+	scale := show.Power(show.Symbol("a", 0), 2)
+	if has("W") {
+		return join("", maths(scale), words("(1 + 2∂"), maths(show.Symbol("W", 0)), words(" + …), symmetrised"))
+	}
+	two := func(x show.Node) show.Node { return show.Product(show.Int(2), x) }
+	var exponent phrase
+	switch {
+	case has("gamma"):
+		exponent = maths(show.Symbol("gamma", 0))
+	case has("zeta"):
+		exponent = maths(two(show.Symbol("zeta", 0)))
+	default:
+		return maths(scale)
+	}
+	if has("E") {
+		exponent = join("", exponent, words(" + 2∂∂"), maths(show.Symbol("E", 0)))
+	}
+	return join("", maths(scale), words(" exp("), exponent, words(")"))
 }
