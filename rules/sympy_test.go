@@ -17,6 +17,7 @@ import (
 	"path/filepath"
 	"regexp"
 	"slices"
+	"sync"
 	"testing"
 
 	"remnant/expr/field"
@@ -25,11 +26,14 @@ import (
 	"remnant/parse/diag"
 )
 
+// hasSymPy asks once: the import takes its time.
+var hasSymPy = sync.OnceValue(func() error { return exec.Command("python3", "-c", "import sympy").Run() })
+
 // python runs a script of testdata, or says why not: a machine without SymPy skips the
 // check, unless CI is set.
 func python(t *testing.T, script string, in []byte) []byte {
 	t.Helper()
-	if err := exec.Command("python3", "-c", "import sympy").Run(); err != nil {
+	if err := hasSymPy(); err != nil {
 		if os.Getenv("CI") != "" {
 			t.Fatalf("python3 with sympy is needed where CI is set: %v", err)
 		}
@@ -194,7 +198,12 @@ func (v *variation) add(t *testing.T, r numbers, name string, gauge parse.Gauge,
 	if err != nil {
 		t.Fatal(err)
 	}
-	text := keepLine.ReplaceAllString(string(data), "")
+	v.addText(t, r, name, string(data), gauge, sector)
+}
+
+func (v *variation) addText(t *testing.T, r numbers, name, text string, gauge parse.Gauge, sector parse.Sector) {
+	t.Helper()
+	text = keepLine.ReplaceAllString(text, "")
 	text = clockLine.ReplaceAllString(text, fmt.Sprintf("clock %v\n", v.clock))
 	text = gaugeLine.ReplaceAllString(text, fmt.Sprintf("gauge %v\nsector %v\n", gauge, sector))
 	m, err := parse.Load(diag.NewSource(name+".act", text), nil)
@@ -404,6 +413,58 @@ func compareEquations(t *testing.T, seed int, cases []*variation) {
 			}
 		}
 	}
+}
+
+// everything has the nodes of the covariant form that the shipped models lack: gradients and
+// boxes of the curvature, third derivatives in both orders, curvature contracted with
+// curvature and derivatives, a denominator.
+const everything = `clock cosmic
+constants c
+functions F(R, phi, X), U(phi)
+background a, phi
+gauge open
+lagrangian covariant =
+    F*Ric.ab*phi;a*phi;b
+  + Riem.abcd*Ric.ac*phi;bd
+  + c*X*Weyl.abcd*Weyl.abcd
+  + R*box[R]
+  + U*R;a*phi;a
+  + G.ab*Ric.ab
+  + phi;a*phi;ab*phi;b/phi^2
+  + X*phi;abb*phi;a
+  - c*phi*phi;bba*phi;a
+`
+
+// lengthen adds n Taylor coefficients on the cosmic clock, for more derivatives.
+func (v *variation) lengthen(r numbers, n int) {
+	more := func(s taylor) taylor { return append(s, r.series()[:n]...) }
+	v.A = more(v.A)
+	for range n {
+		v.Lapse = append(v.Lapse, rational{new(big.Rat)})
+	}
+	for _, m := range []map[string]taylor{v.Scalars, v.Fields} {
+		for _, name := range slices.Sorted(maps.Keys(m)) {
+			m[name] = more(m[name])
+		}
+	}
+	v.rate = v.A.derivative().over(v.A)
+}
+
+func TestSecondVariationOfEverything(t *testing.T) {
+	const seed = 20260715
+	r := numbers{rand.New(rand.NewPCG(seed, 1))}
+	var cases []*variation
+	for _, sector := range []parse.Sector{parse.ScalarSector, parse.VectorSector, parse.TensorSector} {
+		v := r.background(parse.Cosmic)
+		v.Fields = map[string]taylor{}
+		for _, name := range parse.Perturbations(parse.Open, sector, []string{"phi"}) {
+			v.Fields[name] = r.series()
+		}
+		v.lengthen(r, 4)
+		v.addText(t, r, "everything", everything, parse.Open, sector)
+		cases = append(cases, v)
+	}
+	compareEquations(t, seed, cases)
 }
 
 // The background equations from the first variation.

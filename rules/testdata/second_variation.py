@@ -24,7 +24,6 @@ from itertools import combinations
 from sympy import QQ
 
 ZERO, ONE, HALF = QQ(0), QQ(1), QQ(1, 2)
-ORDER = 5  # Taylor coefficients of what is given; each derivative leaves one fewer
 
 
 def number(text):
@@ -99,6 +98,7 @@ class Q:
 
     __slots__ = ("b", "v", "u", "uv")
     kappa = ZERO
+    order = 0  # Taylor coefficients of what is given; each derivative leaves one fewer
 
     def __init__(self, b=None, v=None, u=None, uv=None):
         self.b, self.v, self.u, self.uv = b, v, u or {}, uv or {}
@@ -146,7 +146,7 @@ class Q:
         return self.times(ONE / QQ(o))
 
     def __pow__(self, n):
-        out = Q([ONE] + [ZERO] * (ORDER - 1))
+        out = Q([ONE] + [ZERO] * (Q.order - 1))
         for _ in range(n):
             out = out * self
         return out
@@ -179,7 +179,7 @@ def promote(x):
 
 
 def constant(c):
-    return [c] + [ZERO] * (ORDER - 1) if c else None
+    return [c] + [ZERO] * (Q.order - 1) if c else None
 
 
 def exponential(q):
@@ -218,7 +218,7 @@ class Geometry:
     """Curvature and scalars of one perturbed background, components in coordinates."""
 
     def __init__(self, data):
-        Q.kappa = number(data["kappa"])
+        Q.kappa, Q.order = number(data["kappa"]), len(data["a"])
         self.data = data
         a = Q([number(c) for c in data["a"]])
         lapse = Q([number(c) for c in data["lapse"]])
@@ -307,9 +307,9 @@ class Geometry:
         d = [self.scalars[name].d(a) for a in R4]
         return sum((self.up[a][b] * d[a] * d[b] for a in R4 for b in R4), Q()) * -HALF
 
-    def hessian(self, name):
-        """nabla^a nabla_b phi."""
-        phi = self.scalars[name]
+    def hessian(self, phi):
+        """nabla^a nabla_b of a scalar, given by name or value."""
+        phi = self.scalars.get(phi, phi) if isinstance(phi, str) else phi
         d = [phi.d(a) for a in R4]
         low = [[d[a].d(b) - sum((self.gamma[c][a][b] * d[c] for c in R4), Q()) for b in R4] for a in R4]
         return [[sum((self.up[a][c] * low[c][b] for c in R4), Q()) for b in R4] for a in R4]
@@ -525,7 +525,25 @@ def slices(geo, c, f):
             + trace(matmul(s.ric, s.ric)) + s.acc2 * s.K + pulled + b.d(0) * s.Vn * s.K2)
 
 
-LAGRANGIANS = {f.__name__: f for f in (shearwater, fulmar, petrel, slices, lapwing, kestrel, redshank, godwit, turnstone, knot, ruff,
+def everything(geo, c, f):
+    phi, x, h = geo.scalars["phi"], geo.kinetic("phi"), geo.hessian("phi")
+    down = [phi.d(a) for a in R4]
+    up = [sum((geo.up[a][b] * down[b] for b in R4), Q()) for a in R4]
+    rate = [geo.R.d(a) for a in R4]
+    box = trace(h)
+    along = sum((geo.ric[a][b] * down[a] * up[b] for a in R4 for b in R4), Q())  # Ric^ab phi_a phi_b
+    # R^ab_cd Ric^c_a phi^d_b, a pair c < d being stored
+    mixed = sum((geo.riem[a, b, p, q] * (geo.ric[p][a] * h[q][b] - geo.ric[q][a] * h[p][b])
+                 for a in R4 for b in R4 for p, q in PAIRS), Q())
+    curved = sum((up[a] * box.d(a) for a in R4), Q())  # phi^a (box phi)_a
+    return (f("F", geo.R, phi, x) * along + mixed + c["c"] * x * geo.weyl_squared()
+            + geo.R * trace(geo.hessian(geo.R)) + f("U", phi) * sum((rate[a] * up[a] for a in R4), Q())
+            + geo.ricci_squared() - geo.R * geo.R / 2
+            + sum((down[a] * h[a][b] * up[b] for a in R4 for b in R4), Q()) / (phi * phi)
+            + x * (curved + along) - c["c"] * phi * curved)
+
+
+LAGRANGIANS = {f.__name__: f for f in (everything, shearwater, fulmar, petrel, slices, lapwing, kestrel, redshank, godwit, turnstone, knot, ruff,
                                        sanderling, sanderling_unitary, phalarope, stilt, stilt_unitary, tern, puffin)}
 
 
