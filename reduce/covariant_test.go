@@ -475,36 +475,3 @@ func checkScalars(t *testing.T, m *parse.Model, r *Result, gt, ft, sigma, theta 
 	same(t, "mass", r.Single.Mass, field.Elem{})
 	same(t, "sound speed squared", r.Single.SoundSpeed2, fs.Div(gs))
 }
-
-// The second Noether identities of every shipped covariant model, scalar and vector sector.
-func TestNoetherOfShippedModels(t *testing.T) {
-	files, err := filepath.Glob(filepath.Join("..", "testdata", "*.act"))
-	if err != nil {
-		t.Fatal(err)
-	}
-	checked := 0
-	for _, file := range files {
-		m := load(t, filepath.Base(file))
-		if m.Covariant == nil {
-			continue
-		}
-		checked++
-		for _, sector := range []parse.Sector{parse.ScalarSector, parse.VectorSector} {
-			ids, err := rules.CheckGauge(m.Variant(m.Gauge, sector))
-			if err != nil {
-				t.Fatalf("%s: %v", file, err)
-			}
-			if len(ids) == 0 {
-				t.Errorf("%s, %v sector: nothing was checked", file, sector)
-			}
-			for _, id := range ids {
-				if !id.Holds() {
-					t.Errorf("%s: the identity of %s fails: %v is left", file, id.Parameter, id.Left)
-				}
-			}
-		}
-	}
-	if checked < 12 {
-		t.Errorf("%d covariant models, want all that are shipped", checked)
-	}
-}

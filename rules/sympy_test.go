@@ -279,7 +279,7 @@ func (v *variation) equations(t *testing.T, m *variationModel) map[string]*big.R
 	for _, f := range m.file.Fields {
 		names = append(names, f.Name)
 	}
-	l, err := x.secondOrder(names)
+	l, _, err := x.secondOrder(names)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -314,6 +314,20 @@ func (v *variation) equations(t *testing.T, m *variationModel) map[string]*big.R
 		vary(term.Coef, term.V, term.U)
 	}
 	return out
+}
+
+// offShell is the density to second order, no background equation used.
+func (x *expansion) offShell(t *testing.T, names []string) quantity {
+	t.Helper()
+	e := x.evaluator(x.ring, names)
+	if !x.curvatureGauge() {
+		return e.volume.mul(e.scalar(x.action()))
+	}
+	l, err := x.uniformCurvature(e, len(names))
+	if err != nil {
+		t.Fatal(err)
+	}
+	return l
 }
 
 // expansion is the state in which Expand begins.
