@@ -1,9 +1,14 @@
 package reduce
 
 import (
+	"reflect"
 	"slices"
 	"strings"
 	"testing"
+
+	"remnant/expr/field"
+	"remnant/expr/show"
+	"remnant/parse"
 )
 
 // quadraticFile writes an expansion as a model of the quadratic form: what was declared, the
@@ -87,6 +92,87 @@ func sameOperator(t *testing.T, want, got *Result) {
 			for row := range both[0][n] {
 				compare(both[0][n][row], both[1][n][row])
 			}
+		}
+	}
+}
+
+// expansionKeys are the keys of format 1, in their order.
+var expansionKeys = []string{"format", "model", "clock", "gauge", "sector", "background", "relations", "lagrangian", "fields", "assumptions", "gaugeCheck"}
+
+// Every key is there for a quadratic model too, which has no background equations.
+func TestEveryKeyOfAnExpansionIsThere(t *testing.T) {
+	for _, name := range []string{"kestrel", "plover", "shearwater"} {
+		x, err := new(Variants).Expand(load(t, name+".act"))
+		if err != nil {
+			t.Fatal(err)
+		}
+		data, err := x.Document(nil).Encode()
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := keysOf(t, data); !slices.Equal(got, expansionKeys) {
+			t.Errorf("%s: keys %v", name, got)
+		}
+	}
+}
+
+// A background equation in JSON reads back as the one derived.
+func TestBackgroundReadsBack(t *testing.T) {
+	m := load(t, "ruff.act")
+	x, err := new(Variants).Expand(m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, eq := range x.Document(nil).Background {
+		left, ok := strings.CutSuffix(eq.Equation, " = 0")
+		if !ok || eq.From != x.Background[i].From {
+			t.Fatalf("%+v", eq)
+		}
+		if got := value(t, x.Model, left); !got.IsZero() {
+			t.Errorf("the equation of %s does not hold on the background that it gives: %v is left", eq.From, got)
+		}
+		fresh := load(t, "ruff.act") // where no relation is known
+		if got := value(t, fresh, left); show.Notation(show.Elem(got)) != left {
+			t.Errorf("the equation of %s reads back as %s, want %s", eq.From, show.Notation(show.Elem(got)), left)
+		}
+	}
+}
+
+// Variants share what they have in common and give what each gives alone.
+func TestVariants(t *testing.T) {
+	m := load(t, "redshank.act")
+	var together Variants
+	for _, s := range []parse.Sector{parse.ScalarSector, parse.VectorSector, parse.TensorSector} {
+		for _, g := range []parse.Gauge{parse.Unitary, parse.Flat, parse.Newtonian, parse.Open} {
+			x, err := together.Expand(m.Variant(g, s))
+			if err != nil {
+				t.Fatal(err)
+			}
+			alone, err := new(Variants).Expand(load(t, "redshank.act").Variant(g, s))
+			if err != nil {
+				t.Fatal(err)
+			}
+			if len(x.Lagrangian) != len(alone.Lagrangian) {
+				t.Fatalf("%v, %v: %d products, alone %d", g, s, len(x.Lagrangian), len(alone.Lagrangian))
+			}
+			for i, p := range x.Lagrangian {
+				q := alone.Lagrangian[i]
+				c := value(t, x.Model, text(q.Coef))
+				q.Coef, p.Coef = field.Elem{}, p.Coef.Sub(c).Lowest()
+				if !reflect.DeepEqual(p, q) {
+					t.Errorf("%v, %v: product %+v, alone %+v", g, s, p, q)
+				}
+			}
+			if s == parse.ScalarSector && g != parse.Open {
+				r, err := together.Reduce(m.Variant(g, s))
+				if err != nil || r.DegreesOfFreedom != 1 {
+					t.Errorf("%v: %v", g, err)
+				}
+			}
+		}
+		check, err := together.CheckGauge(m.Variant(parse.Unitary, s))
+		if err != nil || !check.Holds() {
+			t.Errorf("%v: the identities hold: %v", s, err)
 		}
 	}
 }
