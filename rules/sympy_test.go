@@ -279,10 +279,7 @@ func (v *variation) equations(t *testing.T, m *variationModel) map[string]*big.R
 	for _, f := range m.file.Fields {
 		names = append(names, f.Name)
 	}
-	l, _, err := x.secondOrder(names)
-	if err != nil {
-		t.Fatal(err)
-	}
+	l := x.offShell(t, names)
 	out := map[string]*big.Rat{}
 	for name := range v.Fields {
 		out[name] = new(big.Rat)
