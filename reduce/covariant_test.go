@@ -228,6 +228,37 @@ func TestSquaresOfCurvature(t *testing.T) {
 	}
 }
 
+// On flat space the squares of curvature give a scalar of m₀² = M²/(12α) and a massive spin two of
+// m₂² = −M²/(4β) beside the massless graviton (the same paper, section 3, written for αR² +
+// βWeyl², which is (α − 2β/3)R² + 2βRic² up to the Gauss–Bonnet density).
+func TestSquaresOfCurvatureOnFlatSpace(t *testing.T) {
+	const text = `model "Stint: the squares of curvature on flat space"
+constants M > 0, alpha, beta
+background a
+given a' = 0
+gauge newtonian
+lagrangian covariant = M^2*R/2 + alpha*R^2 + beta*Weyl.abcd*Weyl.abcd
+`
+	// ω² − k²/a² of the modes in each sector
+	masses := map[parse.Sector][]string{
+		parse.ScalarSector: {"M^2/(12*alpha)", "-M^2/(4*beta)"},
+		parse.VectorSector: {"-M^2/(4*beta)"},
+		parse.TensorSector: {"0", "-M^2/(4*beta)"},
+	}
+	m := model(t, "stint.act", text)
+	for sector, list := range masses {
+		want := oper.New(m.K.Int(1))
+		for _, mass := range list { // coefficients are constant: the factors commute
+			factor := oper.New(eval(t, m, "k^2/a^2 + ("+mass+")")).Add(oper.Mono(m.K.Int(1), 2))
+			want = want.Mul(factor)
+		}
+		r := mustReduce(t, m.Variant(m.Gauge, sector))
+		if got := oper.New(r.Single.EquationOfMotion...); !got.Equal(want) {
+			t.Errorf("%v sector: the equation of motion is %v, want %v", sector, got, want)
+		}
+	}
+}
+
 // Unitary variables of a Gauss–Bonnet coupling, M²R/2 + X − V + f(φ)·R²_GB: 𝒢_T, ℱ_T, Σ and Θ of
 // Kobayashi, Yamaguchi, Yokoyama 2011, arXiv:1105.5723, section 2 (its functions) and 4.
 const (
