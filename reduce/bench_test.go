@@ -10,8 +10,9 @@ import (
 	"remnant/parse/diag"
 )
 
-// BenchmarkReduce reads and reduces every shipped model of the quadratic form.
-func BenchmarkReduce(b *testing.B) {
+// shipped calls do with the name and text of every shipped model that is accepted.
+func shipped(b *testing.B, do func(name, text string, m *parse.Model)) {
+	b.Helper()
 	files, err := filepath.Glob("../testdata/*.act")
 	if err != nil || len(files) == 0 {
 		b.Fatal("no shipped models", err)
@@ -21,22 +22,54 @@ func BenchmarkReduce(b *testing.B) {
 		if err != nil {
 			b.Fatal(err)
 		}
+		m, err := parse.Load(diag.NewSource(file, string(text)), nil)
 		var refused diag.List
-		if _, err := parse.Load(diag.NewSource(file, string(text)), nil); errors.As(err, &refused) {
+		if errors.As(err, &refused) {
 			continue // of a form that is not reduced
 		}
-		b.Run(filepath.Base(file), func(b *testing.B) {
+		do(filepath.Base(file), string(text), m)
+	}
+}
+
+// BenchmarkReduce reads and reduces every shipped model, in its own sector.
+func BenchmarkReduce(b *testing.B) {
+	shipped(b, func(name, text string, _ *parse.Model) {
+		b.Run(name, func(b *testing.B) {
 			for b.Loop() {
-				m, err := parse.Load(diag.NewSource(file, string(text)), nil)
-				if err != nil {
-					b.Fatal(err)
-				}
+				m := model(b, name, text)
 				if _, err := Reduce(m); err != nil {
 					b.Fatal(err)
 				}
 			}
 		})
+	})
+}
+
+// BenchmarkCovariant times every shipped covariant or adm model from its text on: the
+// expansion alone, the reduction in all sectors, and the Noether check.
+func BenchmarkCovariant(b *testing.B) {
+	jobs := []struct {
+		name string
+		do   func(*parse.Model) error
+	}{
+		{"expand", func(m *parse.Model) error { _, err := new(Variants).Expand(m); return err }},
+		{"sectors", func(m *parse.Model) error { _, err := Sectors(m); return err }},
+		{"check", func(m *parse.Model) error { _, err := new(Variants).CheckGauge(m); return err }},
 	}
+	shipped(b, func(name, text string, m *parse.Model) {
+		if m.Covariant == nil && m.ADM == nil {
+			return
+		}
+		for _, job := range jobs {
+			b.Run(name+"/"+job.name, func(b *testing.B) {
+				for b.Loop() {
+					if err := job.do(model(b, name, text)); err != nil {
+						b.Fatal(err)
+					}
+				}
+			})
+		}
+	})
 }
 
 // BenchmarkCount times the independent count on the largest shipped form.
