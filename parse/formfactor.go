@@ -70,6 +70,9 @@ func (e *elaborator) declareFormFactor(s *Statement) {
 		sym.form.Definition = f.Definition.X
 	}
 	e.model.FormFactors = append(e.model.FormFactors, sym.form)
+	if _, taken := e.symbols["s"]; !taken { // the eigenvalue of box, in W(s)
+		e.enter(&symbol{name: "s", kind: symbolConstant, gen: e.k.Constant("s", field.Unknown)})
+	}
 }
 
 // formSymbol is the form factor that x names, or nil.

@@ -60,7 +60,7 @@ func (e *elimination) run() error {
 		if e.onePivot(keep) {
 			continue
 		}
-		step, weights, found := e.now.exposeHidden(keep, e.rename)
+		v, q, weights, found := e.now.hiddenVector(keep)
 		if !found {
 			e.weights = weights
 			if keep >= 0 && half(weights) == 0 && e.onePivot(-1) {
@@ -68,7 +68,7 @@ func (e *elimination) run() error {
 			}
 			return nil
 		}
-		e.apply(step)
+		e.apply(e.now.redefine(v, q, weights, e.rename))
 	}
 	return nil
 }

@@ -80,19 +80,22 @@ func (s System) rowVanishes(i int) bool {
 	return true
 }
 
-// exposeHidden redefines fields along one null vector of the leading matrix; name gives the
-// redefined fields their new names. It reports false, and the weights, if the leading matrix
-// is regular.
-func (s System) exposeHidden(keep int, name func(string) string) (Step, []int, bool) {
-	m := s.startWeights()
+// hiddenVector finds a null vector of the leading matrix and the field whose weight it
+// lowers. It reports false, and the weights, if the leading matrix is regular.
+func (s System) hiddenVector(keep int) (v []field.Elem, q int, m []int, ok bool) {
+	m = s.startWeights()
 	s.lowerWeights(m, keep)
-	v, ok := oper.NullVector(s.K, s.leading(m))
-	if !ok {
-		return Step{}, m, false
+	if v, ok = oper.NullVector(s.K, s.leading(m)); ok {
+		q = loweredField(v, m, keep)
 	}
-	q := loweredField(v, m, keep)
+	return v, q, m, ok
+}
+
+// redefine shifts fields along the null vector v, whose places are the first of the system;
+// name gives the shifted fields their new names.
+func (s System) redefine(v []field.Elem, q int, m []int, name func(string) string) Step {
 	step := Step{Kind: Redefined, Nonzero: v[q].Vanishable()}
-	e := oper.Identity(s.K, len(m))
+	e := oper.Identity(s.K, len(s.Names))
 	after := System{K: s.K, Names: append([]string(nil), s.Names...)}
 	inv := v[q].Inv()
 	for i := range v {
@@ -108,7 +111,7 @@ func (s System) exposeHidden(keep int, name func(string) string) (Step, []int, b
 	}
 	after.D = s.D.Congruence(e).Map(lowest)
 	step.after = after
-	return step, m, true
+	return step
 }
 
 // loweredField picks the field whose weight the null vector v lowers: of those in v with the

@@ -43,7 +43,7 @@ type Document struct {
 	Quantities
 
 	Series     []SeriesJSON    `json:"series"`     // null if none was asked for
-	FormFactor *struct{}       `json:"formFactor"` // null: no form factor in a quadratic action
+	FormFactor *FormFactorJSON `json:"formFactor"` // null where there is none
 	Stability  []StabilityJSON `json:"stability"`
 	GaugeCheck *GaugeCheckJSON `json:"gaugeCheck"` // null if it was not asked for
 	At         *AtJSON         `json:"at"`         // null if no point was given
@@ -66,6 +66,15 @@ type Quantities struct {
 	EquationOfMotion   *string  `json:"equationOfMotion"`   // one field: "u'' + … = 0"; with the products underived where they are large
 
 	Canonical *CanonicalJSON `json:"canonical"` // one field of second order
+}
+
+// FormFactorJSON is what a form factor leaves: the zeros of W are the poles of the propagator.
+type FormFactorJSON struct {
+	W        *string  `json:"W"`        // in s, the eigenvalue of box; null where it is no function of s
+	Series   []string `json:"series"`   // [w0, w1, …] of W = Σ wₙ sⁿ, in the Taylor coefficients F.n
+	Operator []string `json:"operator"` // [c0, c1, …] of L = Σ cᵢ Dⁱ, with W = 1 + wF(box)L
+	Weight   string   `json:"weight"`   // w
+	LocalDOF int      `json:"localDegreesOfFreedom"`
 }
 
 // EquationJSON is a background relation, what is replaced on the left.
@@ -190,6 +199,7 @@ func (r *Result) Document(expansions []*Expansion, at *Values) *Document {
 	for _, x := range expansions {
 		d.Series = append(d.Series, r.seriesJSON(x))
 	}
+	d.FormFactor = r.formFactorJSON()
 	if at != nil {
 		d.At = &AtJSON{Point: []AssignmentJSON{}, Quantities: r.quantities(at.Single, at.Several)}
 		for _, a := range at.Point {
@@ -333,6 +343,25 @@ func (r *Result) pumpText(one *Single) string {
 	}
 	z, eta := "("+text(*one.ZSquared)+")", "("+text(r.Model.A.Div(r.Model.Lapse))+")"
 	return fmt.Sprintf("%s*(%s*%s')'/(2*%s) - (%s*%s')^2/(4*%s^2)", eta, eta, z, z, eta, z, z)
+}
+
+// formSeriesOrder is the order of the series of W in documents and on pages.
+const formSeriesOrder = 4
+
+func (r *Result) formFactorJSON() *FormFactorJSON {
+	f, k := r.FormFactor, r.Model.K
+	if f == nil {
+		return nil
+	}
+	out := &FormFactorJSON{Weight: text(f.Weight), LocalDOF: f.LocalDOF, Operator: []string{}, Series: []string{}}
+	for i := 0; i <= f.L.Order(); i++ {
+		out.Operator = append(out.Operator, text(f.L.Coef(i)))
+	}
+	if w, ok := f.W(k); ok {
+		out.W = optionalText(&w)
+		out.Series = texts(f.Series(k, formSeriesOrder))
+	}
+	return out
 }
 
 func matricesText(ms [][][]field.Elem) [][][]string {

@@ -27,6 +27,7 @@ type Result struct {
 	Single           *Single
 	Several          *Several
 	Stability        []Statement
+	FormFactor       *FormFactor        // of an action with one; what else is said of one field is nil then
 	Abbreviations    []Abbreviation     // those that Abbreviated put in
 	Assumptions      []field.Assumption // all that was assumed, from the model's own text on
 }
@@ -58,17 +59,21 @@ func reduceBy(expander *rules.Expander, m *parse.Model) (r *Result, err error) {
 	defer budget.Catch(&err)
 	b := m.K.Budget()
 	var background []rules.Equation
+	var expanded *rules.Expansion
 	if m.Covariant != nil || m.ADM != nil {
 		x, err := expander.Expand(m)
 		if err != nil {
 			return nil, err
 		}
-		m, background = x.Model, x.Equations
+		m, background, expanded = x.Model, x.Equations, x
 	}
 	b.Stage("writing the Lagrangian as a quadratic form")
 	r = &Result{Model: m, Background: background, Initial: Quadratic(m)}
 	if m.Keep != nil {
 		r.Requested = m.Keep.Name
+	}
+	if expanded != nil && len(expanded.NonLocal) > 0 {
+		return r, r.reduceNonLocal(expanded)
 	}
 	b.Stage("counting the solutions")
 	if r.Count, err = r.Initial.CountSolutions(); err != nil {

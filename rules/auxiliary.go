@@ -20,6 +20,9 @@ func (x *expansion) curvatureGauge() bool {
 // uniformCurvature expands the density with R = R̄ + ρ, ρ a field of its own with the number
 // of fields given, drops ρ², and puts the perturbation of R for ρ.
 func (x *expansion) uniformCurvature(e *evaluator, rho int) (quantity, error) {
+	if holdsForm(x.action()) {
+		return quantity{}, x.refuse(diag.NotYetSupported, x.m.GaugeSpan, "a form factor in the unitary gauge δR = 0 is not yet supported", "gauge newtonian expands it")
+	}
 	full := e.scalarCurvature()
 	e.cache["R"] = labelled{tensor: scalarTensor(background(full.bg).add(x.ring.field(rho)))}
 	l := e.volume.mul(e.scalar(x.m.Covariant))

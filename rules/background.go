@@ -34,7 +34,7 @@ func (x *expansion) firstOrder() ([]Equation, error) {
 	r := *x.ring
 	r.uniform = true
 	e := x.evaluator(&r, names)
-	l := e.volume.mul(e.scalar(x.action()))
+	l, _ := x.lagrangian(e)
 	var out []Equation
 	for i, n := range names {
 		out = append(out, Equation{From: n, Value: r.euler(l, i, x.density)})

@@ -16,6 +16,7 @@ import (
 type Expansion struct {
 	Model     *parse.Model // with the terms of its quadratic form, and the derived relations
 	Equations []Equation   // of the background, in the order in which they were used
+	NonLocal  []NonLocal   // what the form factors leave; its fields are the model's last
 }
 
 // expansion is the state of a run.
@@ -63,10 +64,11 @@ func (s *Expander) Expand(model *parse.Model) (out *Expansion, err error) {
 	for _, f := range m.Fields {
 		names = append(names, f.Name)
 	}
-	l, err := x.secondOrder(names)
+	l, ranks, err := x.secondOrder(names)
 	if err != nil {
 		return nil, err
 	}
+	l, nonlocal := x.integrateIn(l, ranks)
 	if s.equations == nil {
 		if err := x.solve(eqs); err != nil {
 			return nil, err
@@ -81,7 +83,7 @@ func (s *Expander) Expand(model *parse.Model) (out *Expansion, err error) {
 	if err := x.finish(l); err != nil {
 		return nil, err
 	}
-	return &Expansion{Model: &m, Equations: s.equations}, nil
+	return &Expansion{Model: &m, Equations: s.equations, NonLocal: nonlocal}, nil
 }
 
 // catchRefusal turns a refusal that was raised deep in an evaluation into the error.
@@ -113,12 +115,14 @@ func (x *expansion) evaluator(r *ring, names []string) *evaluator {
 	return e
 }
 
-func (x *expansion) secondOrder(names []string) (quantity, error) {
+func (x *expansion) secondOrder(names []string) (quantity, []rankOne, error) {
 	e := x.evaluator(x.ring, names)
 	if x.curvatureGauge() {
-		return x.uniformCurvature(e, len(names))
+		l, err := x.uniformCurvature(e, len(names))
+		return l, nil, err
 	}
-	return e.volume.mul(e.scalar(x.action())), nil
+	l, ranks := x.lagrangian(e)
+	return l, ranks, nil
 }
 
 // finish writes the terms of the quadratic form, coefficients reduced by the relations.

@@ -45,6 +45,9 @@ func (s *Expander) CheckGauge(m *parse.Model) ([]GaugeIdentity, error) {
 	if err != nil {
 		return nil, err
 	}
+	for _, f := range x.Model.Fields[len(names):] {
+		names = append(names, f.Name) // of form factors: they do not change
+	}
 	d := Form(x.Model, x.Model.Quadratic, len(names))
 	var out []GaugeIdentity
 	for _, g := range generators(m) {

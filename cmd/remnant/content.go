@@ -61,6 +61,9 @@ func clockName(c parse.Clock) string {
 	return [...]string{parse.Cosmic: "t", parse.Conformal: "eta", parse.Efolds: "N"}[c]
 }
 
+// abbreviationLabel is the label of the model's abbreviations at the head of a page.
+const abbreviationLabel = "let"
+
 // titleOf is the model's title, or the name of its file.
 func titleOf(m *parse.Model) string {
 	if m.Title != "" {
@@ -78,7 +81,7 @@ func (f *findings) head() []row {
 		lets = append(lets, compare(show.Symbol(l.Name, 0), equals, show.Elem(l.Value)))
 	}
 	if len(lets) > 0 {
-		rows = append(rows, row{label: words("let"), value: join(",  ", lets...)})
+		rows = append(rows, row{label: words(abbreviationLabel), value: join(",  ", lets...)})
 	}
 	return rows
 }
@@ -204,6 +207,9 @@ func degrees(n int) string {
 
 // remains is the result itself.
 func (f *findings) remains() *section {
+	if f.FormFactor != nil {
+		return f.nonLocal()
+	}
 	var names []phrase
 	for _, n := range f.Remaining.Names {
 		names = append(names, maths(show.Symbol(n, 0)))
