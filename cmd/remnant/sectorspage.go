@@ -13,6 +13,9 @@ var sectorWord = map[parse.Sector]string{
 	parse.ScalarSector: "Scalars", parse.VectorSector: "Vectors", parse.TensorSector: "Tensors",
 }
 
+// abbreviationLabel is the label under which the head of a page has the model's abbreviations.
+const abbreviationLabel = "let"
+
 // sectorsPage joins the pages of a reduction in all sectors.
 func sectorsPage(list []*findings, pages []*page) *page {
 	first := list[0]
@@ -23,6 +26,13 @@ func sectorsPage(list []*findings, pages []*page) *page {
 		total += f.DegreesOfFreedom
 	}
 	p := &page{title: pages[0].title, head: sectorsHead(first.Model, assumed)}
+	for _, q := range pages {
+		for _, r := range q.head {
+			if len(r.label) == 1 && r.label[0].words == abbreviationLabel {
+				p.head = append(p.head, r)
+			}
+		}
+	}
 	for i, f := range list {
 		p.sections = append(p.sections, headed(sectorWord[f.Model.Sector], pages[i].sections)...)
 	}
