@@ -61,9 +61,6 @@ func clockName(c parse.Clock) string {
 	return [...]string{parse.Cosmic: "t", parse.Conformal: "eta", parse.Efolds: "N"}[c]
 }
 
-// abbreviationLabel is the label of the model's abbreviations at the head of a page.
-const abbreviationLabel = "let"
-
 // titleOf is the model's title, or the name of its file.
 func titleOf(m *parse.Model) string {
 	if m.Title != "" {
@@ -81,7 +78,7 @@ func (f *findings) head() []row {
 		lets = append(lets, compare(show.Symbol(l.Name, 0), equals, show.Elem(l.Value)))
 	}
 	if len(lets) > 0 {
-		rows = append(rows, row{label: words(abbreviationLabel), value: join(",  ", lets...)})
+		rows = append(rows, row{label: words("let"), value: join(",  ", lets...)})
 	}
 	return rows
 }
