@@ -170,8 +170,7 @@ func TestGeneralKineticFunction(t *testing.T) {
 func substituted(d oper.Oper, e field.Elem) oper.Oper { return oper.New(e).Mul(d).Mul(oper.New(e)) }
 
 // In the flat gauge ζ = −Hδφ/φ', and in every gauge ζ − Hδφ/φ' is the ζ of the unitary one
-// (Maldacena 2003, astro-ph/0210603, section 2; Weinberg 2008, Cosmology, section 5.4): one
-// operator in all three gauges.
+// (Maldacena 2003, astro-ph/0210603, section 2): one operator in all three gauges.
 func TestGaugesAgree(t *testing.T) {
 	models := map[string]*parse.Model{
 		"knot of X": model(t, "knot.act", strings.Replace(modelText(t, "knot.act"),
