@@ -22,6 +22,7 @@ type Expanded struct {
 	Background  []rules.Equation // as derived; nil for a quadratic model, which has its relations given
 	Form        System           // 𝒟 of S = ½∫Φᵀ𝒟Φ
 	Lagrangian  []Product        // the same as a Lagrangian, S = ∫dτ d³x Σ products
+	NonLocal    []rules.NonLocal // what form factors add to it
 	Assumptions []field.Assumption
 }
 
@@ -51,7 +52,7 @@ func (v *Variants) Expand(m *parse.Model) (x *Expanded, err error) {
 		if err != nil {
 			return nil, err
 		}
-		x.Model, x.Background = full.Model, full.Equations
+		x.Model, x.Background, x.NonLocal = full.Model, full.Equations, full.NonLocal
 	}
 	m.K.Budget().Stage("writing the Lagrangian as a quadratic form")
 	x.Form = Quadratic(x.Model)

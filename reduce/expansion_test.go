@@ -97,7 +97,7 @@ func sameOperator(t *testing.T, want, got *Result) {
 }
 
 // expansionKeys are the keys of format 1, in their order.
-var expansionKeys = []string{"format", "model", "clock", "gauge", "sector", "background", "relations", "lagrangian", "fields", "assumptions", "gaugeCheck"}
+var expansionKeys = []string{"format", "model", "clock", "gauge", "sector", "background", "relations", "lagrangian", "fields", "formFactors", "assumptions", "gaugeCheck"}
 
 // Every key is there for a quadratic model too, which has no background equations.
 func TestEveryKeyOfAnExpansionIsThere(t *testing.T) {

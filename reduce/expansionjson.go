@@ -30,8 +30,13 @@ type ExpansionDocument struct {
 	// Lagrangian is quadratic in Fields and can be read back as a quadratic Lagrangian with
 	// these fields and relations: S = ∫dτ d³x L. For tensors gamma² is gamma_ij gamma_ij, for
 	// vectors S² is S_i S_i.
-	Lagrangian  string   `json:"lagrangian"`
-	Fields      []string `json:"fields"`
+	Lagrangian string   `json:"lagrangian"`
+	Fields     []string `json:"fields"`
+
+	// FormFactors lists the terms −½√−ḡ Y (wF(□̄))⁻¹ Y that stand beside the Lagrangian, with Y
+	// one of the fields; empty where the action has no form factor.
+	FormFactors []NonLocalJSON `json:"formFactors"`
+
 	Assumptions []string `json:"assumptions"` // "H != 0" or "x > 0"
 
 	GaugeCheck *GaugeCheckJSON `json:"gaugeCheck"` // null if it was not asked for
@@ -44,6 +49,13 @@ type BackgroundJSON struct {
 	Equation  string  `json:"equation"`
 	From      string  `json:"from"`
 	SolvedFor *string `json:"solvedFor"` // null: it follows from the equations before it
+}
+
+// NonLocalJSON is the term of one form factor F: Y is Field and w is Weight.
+type NonLocalJSON struct {
+	FormFactor string `json:"formFactor"`
+	Field      string `json:"field"`
+	Weight     string `json:"weight"`
 }
 
 // GaugeCheckJSON holds the Noether identities; for tensors there are none.
@@ -73,7 +85,8 @@ func (x *Expanded) Document(check *GaugeCheck) *ExpansionDocument {
 	d := &ExpansionDocument{
 		Format: JSONFormat, Model: orNull(m.Title), Clock: m.Clock.String(),
 		Background: []BackgroundJSON{}, Relations: relationsJSON(m.K), Fields: append([]string{}, x.Form.Names...),
-		Lagrangian: show.Notation(x.LagrangianNode()), Assumptions: []string{}, GaugeCheck: check.Document(),
+		Lagrangian: show.Notation(x.LagrangianNode()), Assumptions: []string{},
+		FormFactors: []NonLocalJSON{}, GaugeCheck: check.Document(),
 	}
 	d.Gauge, d.Sector = gaugeWords(m)
 	for _, eq := range x.Background {
@@ -82,6 +95,9 @@ func (x *Expanded) Document(check *GaugeCheck) *ExpansionDocument {
 			item.SolvedFor = orNull(show.Notation(show.Generator(m.K, eq.Leader)))
 		}
 		d.Background = append(d.Background, item)
+	}
+	for _, n := range x.NonLocal {
+		d.FormFactors = append(d.FormFactors, NonLocalJSON{n.Form.Name, x.Form.Names[n.Field], text(n.Weight)})
 	}
 	for _, a := range x.Assumptions {
 		d.Assumptions = append(d.Assumptions, assumptionText(a))

@@ -57,7 +57,7 @@ func backgroundSection(x *reduce.Expanded) section {
 	for _, eq := range x.Background {
 		from := maths(show.Symbol(eq.From, 0))
 		r := row{label: join("", words("from "), from), value: compare(withoutUnits(x.Model, eq.Value), equals, show.Int(0)), note: solvedNote(x.Model, eq)}
-		if !eq.Solved {
+		if !eq.Solved && !eq.Value.IsZero() {
 			idle = append(idle, from)
 		}
 		rows = append(rows, r)
@@ -86,7 +86,10 @@ func bianchiPhrase(idle []phrase) phrase {
 
 // solvedNote says what an equation was solved for.
 func solvedNote(m *parse.Model, eq rules.Equation) phrase {
-	if !eq.Solved {
+	switch {
+	case eq.Value.IsZero():
+		return words("holds on this background")
+	case !eq.Solved:
 		return words("holds by those before")
 	}
 	text := "solved for "
@@ -158,7 +161,22 @@ func quadraticSection(x *reduce.Expanded, full bool) section {
 	if rows := names.rows(); rows != nil {
 		s.blocks = append(s.blocks, block{rows: rows})
 	}
+	for _, n := range x.NonLocal {
+		s.blocks = append(s.blocks, block{sentence: nonLocalPhrase(x, n)})
+	}
 	return s
+}
+
+// nonLocalPhrase says what a form factor adds to the action.
+func nonLocalPhrase(x *reduce.Expanded, n rules.NonLocal) phrase {
+	y := maths(show.Symbol(x.Form.Names[n.Field], 0))
+	form := join("", maths(show.Symbol(n.Form.Name, 0)), words("(□)"))
+	weighted := join("", words("("), maths(show.Elem(n.Weight)), words(" "), form, words(")⁻¹"))
+	if n.Weight.IsOne() {
+		weighted = join("", form, words("⁻¹"))
+	}
+	return join("", words("and −½∫√−g "), y, words(" "), weighted, words(" "), y,
+		words(", where "), y, words(" stands for what "), form, words(" acts on: its own equation gives it back."))
 }
 
 // factorNames names the long factors of coefficients.

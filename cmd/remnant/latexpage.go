@@ -107,7 +107,7 @@ var latexMarks = func() *strings.Replacer {
 	pairs := []string{
 		`\`, `\textbackslash{}`, "{", `\{`, "}", `\}`, "$", `\$`, "&", `\&`, "#", `\#`, "_", `\_`, "%", `\%`,
 		"~", `\textasciitilde{}`, "^", `\textasciicircum{}`, "–", "--", "—", "---", "−", "$-$", "²", "$^2$", "³", "$^3$", "½", `$\frac{1}{2}$`, "¼", `$\frac{1}{4}$`,
-		"ℋ", `$\mathcal{H}$`, "∂", `$\partial$`, "≠", `$\neq$`, "…", `\dots{}`,
+		"∫", `$\int$`, "√−g", `$\sqrt{-g}$`, "⁻¹", "$^{-1}$", "ℋ", `$\mathcal{H}$`, "∂", `$\partial$`, "≠", `$\neq$`, "…", `\dots{}`,
 	}
 	for _, l := range show.Letters() {
 		pairs = append(pairs, l.Unicode, "$"+l.LaTeX+"$")
