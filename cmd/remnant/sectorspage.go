@@ -20,8 +20,11 @@ const abbreviationLabel = "let"
 func sectorsPage(list []*findings, pages []*page) *page {
 	first := list[0]
 	var assumed []field.Assumption
-	total := 0
+	total, beside := 0, ""
 	for _, f := range list {
+		if f.FormFactor != nil {
+			beside = " beside the poles of the form factor"
+		}
 		assumed = joinAssumptions(assumed, f.Assumptions)
 		total += f.DegreesOfFreedom
 	}
@@ -36,7 +39,7 @@ func sectorsPage(list []*findings, pages []*page) *page {
 	for i, f := range list {
 		p.sections = append(p.sections, headed(sectorWord[f.Model.Sector], pages[i].sections)...)
 	}
-	p.sections = append(p.sections, section{heading: words("All sectors: " + degrees(total))})
+	p.sections = append(p.sections, section{heading: words("All sectors: " + degrees(total) + beside)})
 	return p
 }
 
