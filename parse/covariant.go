@@ -68,6 +68,9 @@ func (e *elaborator) tensor(x Expr) Tensor {
 }
 
 func (e *elaborator) negated(t Tensor, at diag.Span) Tensor {
+	if v, ok := t.(*TensorValue); ok {
+		return &TensorValue{node{at}, v.Value.Neg()}
+	}
 	return &TensorProduct{node{at}, []Tensor{&TensorValue{node{at}, e.k.Int(-1)}, t}}
 }
 
@@ -118,13 +121,10 @@ func (e *elaborator) tensorLet(n *Name, s *symbol) Tensor {
 	return t
 }
 
-// theScalar is the scalar of a bare X: phi, or the only one that is declared.
+// theScalar is the scalar of a bare X: the only one that is declared.
 func (e *elaborator) theScalar(n *Name) field.Gen {
 	var found []field.Gen
 	for _, b := range e.model.Background {
-		if b.Name == "phi" {
-			return b.Gen
-		}
 		if b.Name != "a" && b.Name != "H" {
 			found = append(found, b.Gen)
 		}
@@ -176,7 +176,24 @@ func (e *elaborator) tensorSum(n *Sum) Tensor {
 		}
 		out.Terms = append(out.Terms, t)
 	}
-	return out
+	return e.folded(out, out.Terms, field.Elem.Add)
+}
+
+// folded is the value of a sum or product of constants, and t itself where it holds more.
+func (e *elaborator) folded(t Tensor, parts []Tensor, join func(a, b field.Elem) field.Elem) Tensor {
+	var v field.Elem
+	for i, p := range parts {
+		c, ok := p.(*TensorValue)
+		if !ok {
+			return t
+		}
+		if i == 0 {
+			v = c.Value
+		} else {
+			v = join(v, c.Value)
+		}
+	}
+	return &TensorValue{node{t.Span()}, v}
 }
 
 func indexList(letters string) string {
@@ -196,7 +213,7 @@ func (e *elaborator) tensorProduct(n *Product) Tensor {
 		out.Factors = append(out.Factors, t)
 	}
 	e.countLetters(out, n)
-	return out
+	return e.folded(out, out.Factors, field.Elem.Mul)
 }
 
 // inverted is 1/t for a scalar t.

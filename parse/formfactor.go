@@ -20,7 +20,10 @@ type FormFactorDecl struct {
 	Definition Expr // F(box) as an expression in box; nil if it has none
 	Rule       *Rule
 
-	values []formValue
+	values     []formValue
+	remainders []*FormFactorDecl
+	of         *FormFactorDecl // of a remainder: what it is taken from
+	about      field.Elem      // of a remainder: the point
 }
 
 // formValue is the constant that stands for F.n(r).
@@ -51,6 +54,23 @@ func (d *FormFactorDecl) Value(k *field.Field, n int, r field.Elem) field.Elem {
 	g := k.Constant(name, field.Unknown)
 	d.values = append(d.values, formValue{n, r, g})
 	return k.Gen(g)
+}
+
+// Remainder is the form factor Z of F(x) = F(r) + F'(r)(x − r) + (x − r)²Z(x), as entire as F.
+func (d *FormFactorDecl) Remainder(r field.Elem) *FormFactorDecl {
+	for _, z := range d.remainders {
+		if z.about.Equal(r) {
+			return z
+		}
+	}
+	z := &FormFactorDecl{Name: "Z", Span: d.Span, of: d, about: r}
+	d.remainders = append(d.remainders, z)
+	return z
+}
+
+// Of gives, for a remainder, the form factor that it is taken from and the point r.
+func (d *FormFactorDecl) Of() (f *FormFactorDecl, r field.Elem, ok bool) {
+	return d.of, d.about, d.of != nil
 }
 
 // declareFormFactor enters a form factor.

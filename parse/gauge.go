@@ -1,6 +1,7 @@
 package parse
 
 import (
+	"fmt"
 	"slices"
 
 	"remnant/parse/diag"
@@ -100,6 +101,10 @@ func (e *elaborator) gauge() {
 	}
 	for i, name := range Perturbations(m.Gauge, m.Sector, scalars) {
 		m.Fields = append(m.Fields, FieldDecl{name, diag.Span{}})
+		if old, ok := e.symbols[name]; ok && old.kind != symbolField { // fields have their own refusal
+			e.report(newFault(diag.Reserved, old.at, fmt.Sprintf("'%s' is a perturbation of the %s form and cannot be declared", name, e.form), "another name is needed"))
+			continue
+		}
 		e.enter(&symbol{name: name, kind: symbolField, index: i})
 	}
 }

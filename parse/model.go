@@ -37,7 +37,8 @@ type Model struct {
 	Relations  []RelationDecl // in the order of the numbers that K knows them by
 	Lets       []Let
 
-	FormFactors []*FormFactorDecl
+	FormFactors    []*FormFactorDecl
+	Eigenfunctions []Eigenfunction
 
 	Quadratic      []Term // the Lagrangian of the quadratic form
 	Covariant      Tensor // the Lagrangian of the covariant form; nil in the others

@@ -56,10 +56,18 @@ func (e *elaborator) given(s *Statement) {
 		return
 	}
 	left, right := s.Given.Left.X, s.Given.Right.X
+	if apply, ok := left.(*Apply); ok {
+		e.eigenfunction(s, apply)
+		e.refresh()
+		return
+	}
 	if hasApply(left) {
 		panic(newFault(diag.NotYetSupported, left.Span(), "a relation for an operator's value is not yet supported", "relations for functions of time and their derivatives are read"))
 	}
 	g, plain := e.symbolGen(left)
+	if v, ok := e.formValue(left); ok { // a condition on a form factor
+		g, plain = v.Num().Vars()[0], true
+	}
 	if plain {
 		e.leaderOnce(g, left)
 	}

@@ -81,3 +81,44 @@ func TestFormFactorOnConformalClock(t *testing.T) {
 	m := model(t, "siskin.act", "clock conformal\n"+strings.Replace(deSitter, "given H' = 0", "given H' = H^2", 1))
 	sameW(t, m, mustReduce(t, m), "1 - 2*(3*s + 12*H^2/a^2)*F(s)/(M^2 + 24*F(0)*H^2/a^2)")
 }
+
+const starobinsky = `model "Siskin: a form factor on the background of R² inflation"
+constants M > 0, r1 > 0
+formfactor F(box)
+background a
+given box[R] = r1*R
+given F.1(r1) = 0
+given F(r1) = M^2/(6*r1)
+gauge newtonian
+lagrangian covariant = M^2*R/2 + R*F(box)[R]/2
+`
+
+// On a background with □R = r₁R and the conditions F′(r₁) = 0, M² = 6r₁F(r₁) (Biswas, Mazumdar,
+// Siegel 2006, hep-th/0508194), the local theory is R + R², whose scalaron decouples; what is
+// left for the form factor is a local operator L with coefficients that depend on time. With
+// a quadratic F the second operator Z⁻¹ + L, Z = f₂, is local too and of fourth order: with the
+// scalaron that makes the three degrees of freedom that the brute-force expansion has.
+func TestFormFactorOnInflation(t *testing.T) {
+	m := model(t, "siskin.act", starobinsky)
+	r := mustReduce(t, m)
+	f := r.FormFactor
+	if f == nil || f.LocalDOF != 1 || f.L.Order() != 4 {
+		t.Fatalf("form factor %v", f)
+	}
+	if _, ok := f.W(m.K); ok {
+		t.Error("L depends on time and W is no function of s")
+	}
+	lead := f.L.Lead()
+	same(t, "leading coefficient", &lead, eval(t, m, "6*r1/M^2"))
+	brute := mustReduce(t, model(t, "siskin.act", `constants M > 0, r1 > 0, f2 > 0
+background a
+given box[R] = r1*R
+let f1 = -2*f2*r1
+let f0 = M^2/(6*r1) + f2*r1^2
+gauge newtonian
+lagrangian covariant = M^2*R/2 + R*(f0 + f1*box + f2*box^2)[R]/2
+`))
+	if want := f.LocalDOF + f.L.Order()/2; brute.DegreesOfFreedom != want {
+		t.Errorf("brute force finds %d degrees of freedom, the split %d", brute.DegreesOfFreedom, want)
+	}
+}

@@ -165,6 +165,13 @@ type rankOne struct {
 }
 
 func (x *expansion) formTerm(e *evaluator, t formTerm) (quantity, []rankOne) {
+	if t.left != nil && parse.SameScalar(t.left, t.right) {
+		for _, eig := range x.m.Eigenfunctions {
+			if parse.SameScalar(eig.Scalar, t.right) {
+				return x.splitAtEigenvalue(e, t, eig)
+			}
+		}
+	}
 	right := e.scalar(t.right)
 	left := e.int(1)
 	if t.left != nil {
@@ -183,6 +190,33 @@ func (x *expansion) formTerm(e *evaluator, t formTerm) (quantity, []rankOne) {
 	sum := quantity{lin: p}.add(quantity{lin: q}).lin
 	difference := quantity{lin: p}.sub(quantity{lin: q}).lin
 	return local, []rankOne{{t.form, t.coef.Scale(1, 2), sum}, {t.form, t.coef.Scale(-1, 2), difference}}
+}
+
+// splitAtEigenvalue writes OF(□)O, for □O = r₁O + r₂ on the background, with
+// F(x) = F(r₁) + F′(r₁)(x − r₁) + (x − r₁)²Z(x) and Y = (□ − r₁)O − r₂, which vanishes there. As □ is
+// self-adjoint and Z(□) acts on a constant as Z(0),
+//
+//	O F(□)O = F(r₁)O² + F′(r₁)O(□ − r₁)O + Y Z(□)Y + 2r₂Z(0)Y + r₂²Z(0),
+//
+// with ∫√−g Y = −∫√−g (r₁O + r₂). All but YZ(□)Y is local, and that is ρZ(□̄)ρ with ρ = Y⁽¹⁾.
+func (x *expansion) splitAtEigenvalue(e *evaluator, t formTerm, eig parse.Eigenfunction) (quantity, []rankOne) {
+	k := x.m.K
+	o := e.scalar(t.right)
+	shifted := e.box(o).sub(o.scale(eig.R1)) // (□ − r₁)O
+	y := shifted.sub(background(eig.R2))
+	f0, f1 := t.form.Value(k, 0, eig.R1), t.form.Value(k, 1, eig.R1)
+	local := o.mul(o).scale(f0).add(o.mul(shifted).scale(f1))
+	if !eig.R2.IsZero() {
+		z0 := t.form.Value(k, 2, field.Elem{}) // F″(0)/2 where r₁ = 0
+		if !eig.R1.IsZero() {
+			at0 := t.form.Value(k, 0, field.Elem{})
+			z0 = at0.Sub(f0).Add(eig.R1.Mul(f1)).Div(eig.R1.Mul(eig.R1))
+		}
+		vanishing := o.scale(eig.R1).add(background(eig.R2)).scale(eig.R2.Mul(z0).Scale(-2, 1))
+		local = local.add(vanishing).add(background(eig.R2.Mul(eig.R2).Mul(z0)))
+	}
+	z := t.form.Remainder(eig.R1)
+	return local.scale(t.coef), []rankOne{{z, t.coef.Scale(2, 1), y.lin}}
 }
 
 // constantOn refuses a scalar that varies on the background.

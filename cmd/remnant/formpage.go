@@ -14,18 +14,24 @@ const pageSeriesOrder = 4
 func (f *findings) nonLocal() *section {
 	ff, k := f.FormFactor, f.Model.K
 	name := maths(show.Symbol(f.Variable, 0))
-	s := &section{heading: join("", words("Remains: "), name, words(", the field of the form factor "), maths(show.Symbol(ff.Form.Name, 0)))}
+	form := ff.Form.Name
+	s := &section{heading: join("", words("Remains: "), name, words(", the field of the form factor "), maths(show.Symbol(form, 0)))}
 	w, isFunction := ff.W(k)
 	if isFunction {
 		s.blocks = append(s.blocks, block{display: show.Equation(show.Symbol("W(s)", 0), show.Elem(w))})
 	} else {
-		s.blocks = append(s.blocks, block{sentence: words("W = 1 + w F(□) L is an operator with coefficients that depend on time.")})
+		s.blocks = append(s.blocks, block{sentence: words("W = 1 + w " + form + "(□) L is an operator with coefficients that depend on time.")})
 	}
-	rows := []row{
-		{label: words("action"), value: join("", words("−½∫√−g "), name, words(" [ (w F(□))⁻¹ + L ] "), name), note: words("poles are the zeros of W = 1 + w F(□) L")},
+	rows := []row{}
+	if of, r, ok := ff.Form.Of(); ok {
+		at := show.Elem(r)
+		rows = append(rows, row{label: words("where"), value: join("", words(of.Name+"(x) = "+of.Name+"(r) + "+of.Name+"'(r)(x − r) + (x − r)²"+form+"(x) with r = "), maths(at))})
+	}
+	rows = append(rows, []row{
+		{label: words("action"), value: join("", words("−½∫√−g "), name, words(" [ (w "+form+"(□))⁻¹ + L ] "), name), note: words("poles are the zeros of W = 1 + w " + form + "(□) L")},
 		{label: words("w"), value: maths(show.Elem(ff.Weight))},
 		{label: words("without it"), value: words(degrees(ff.LocalDOF)), note: words("confirmed independently")},
-	}
+	}...)
 	if ff.Powers != nil {
 		var terms []show.Node
 		for n := len(ff.Powers) - 1; n >= 0; n-- {
