@@ -104,7 +104,7 @@ func solvedNote(m *parse.Model, eq rules.Equation) phrase {
 }
 
 // withoutUnits lays out the left side of e = 0 without numbers, without powers of the scale
-// factor, which is positive, and with a positive term in front.
+// factor and the lapse, which do not vanish, and with a positive term in front.
 func withoutUnits(m *parse.Model, e field.Elem) show.Node {
 	e = e.Lowest()
 	if e.IsZero() {
@@ -112,10 +112,13 @@ func withoutUnits(m *parse.Model, e field.Elem) show.Node {
 	}
 	number, factors := e.Factors()
 	e = e.Div(m.K.Rat(number))
-	gens := m.A.Gens()
-	for _, f := range factors {
-		if f.P.IsMono() && len(gens) == 1 && f.P.Has(gens[0]) {
-			e = e.Div(m.K.Gen(gens[0]).Pow(f.Exp))
+	units := append(m.A.Gens(), m.Lapse.Gens()...)
+	slices.Sort(units)
+	for _, g := range slices.Compact(units) {
+		for _, f := range factors {
+			if f.P.IsMono() && f.P.Has(g) {
+				e = e.Div(m.K.Gen(g).Pow(f.Exp))
+			}
 		}
 	}
 	if strings.HasPrefix(show.ASCII(show.Elem(e), 0), "-") {
