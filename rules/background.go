@@ -62,37 +62,61 @@ func (x *expansion) bianchi(eqs []Equation) error {
 	return nil
 }
 
-// solve makes the equations relations of the field, each reduced by those before.
+// solve makes the equations relations of the field, each reduced by those before. One that can
+// be solved for nothing waits until the others are; the Bianchi identity then makes its
+// derivative vanish, and it may fix a function of X alone without its derivatives.
 func (x *expansion) solve(eqs []Equation) error {
-	k := x.m.K
+	var waiting []int
 	for i := range eqs {
-		k.Budget().Stage("solving the background equation of " + eqs[i].From)
-		e, err := eqs[i].Value.Normal()
-		if err != nil {
-			return x.noSolution(eqs[i], eqs[i].Value)
+		err := x.solveOne(&eqs[i], eqs, false)
+		var stuck *field.Unsolvable
+		if errors.As(err, &stuck) {
+			waiting = append(waiting, i)
+		} else if err != nil {
+			return err
 		}
-		e = e.Lowest()
-		eqs[i].Reduced = e
-		if e.IsZero() {
-			continue
+	}
+	for _, i := range waiting {
+		if err := x.solveOne(&eqs[i], eqs, true); err != nil {
+			return x.relationError(eqs[i], eqs[i].Reduced, err)
 		}
-		if len(e.Vanishable()) == 0 { // it cannot vanish
-			return x.noSolution(eqs[i], e)
-		}
-		x.m.Relations = append(x.m.Relations, parse.RelationDecl{Text: "the equation of " + eqs[i].From, Auto: true})
-		number := len(x.m.Relations) - 1
-		eqs[i].Leader, err = x.orient(e, number, eqs)
-		if err != nil {
-			return x.relationError(eqs[i], e, err)
-		}
-		eqs[i].Solved = true
 	}
 	return nil
 }
 
+func (x *expansion) solveOne(eq *Equation, eqs []Equation, last bool) error {
+	k := x.m.K
+	k.Budget().Stage("solving the background equation of " + eq.From)
+	e, err := eq.Value.Normal()
+	if err != nil {
+		return x.noSolution(*eq, eq.Value)
+	}
+	e = e.Lowest()
+	eq.Reduced = e
+	if e.IsZero() {
+		return nil
+	}
+	if len(e.Vanishable()) == 0 { // it cannot vanish
+		return x.noSolution(*eq, e)
+	}
+	number := len(x.m.Relations)
+	eq.Leader, err = x.orient(e, number, eqs, last)
+	var stuck *field.Unsolvable
+	if errors.As(err, &stuck) {
+		return err
+	}
+	if err != nil {
+		return x.relationError(*eq, e, err)
+	}
+	x.m.Relations = append(x.m.Relations, parse.RelationDecl{Text: "the equation of " + eq.From, Auto: true})
+	eq.Solved = true
+	return nil
+}
+
 // orient chooses the leader of e = 0 and adds the relation: the first class that holds a
-// jet in which e is linear, else a rate that enters squared.
-func (x *expansion) orient(e field.Elem, number int, eqs []Equation) (field.Gen, error) {
+// jet in which e is linear. The last resorts are a function of X alone that stands beside its
+// derivatives, and a rate that enters squared.
+func (x *expansion) orient(e field.Elem, number int, eqs []Equation, last bool) (field.Gen, error) {
 	k, rank := x.m.K, x.rank
 	if x.m.ADM != nil {
 		rank = func(g field.Gen) []int { return x.admRank(g, eqs) }
@@ -100,12 +124,27 @@ func (x *expansion) orient(e field.Elem, number int, eqs []Equation) (field.Gen,
 	var best field.Gen
 	bestRank := []int(nil)
 	for _, g := range e.Num().Vars() {
-		if r := rank(g); r != nil && k.CanLead(e, g) && slices.Compare(r, bestRank) > 0 {
+		r := rank(g)
+		if r == nil || !k.CanLead(e, g) {
+			continue
+		}
+		r = slices.Insert(r, 2, -e.Num().CoeffsIn(g)[1].TotalDegree()) // of equals the simplest coefficient
+		if slices.Compare(r, bestRank) > 0 {
 			best, bestRank = g, r
 		}
 	}
 	if bestRank != nil {
 		return best, k.RelateFor(e, best, number)
+	}
+	if !last {
+		return 0, &field.Unsolvable{Rest: e}
+	}
+	for _, g := range e.Num().Vars() {
+		if in := k.Info(g); in.Kind == field.FreeFunction && slices.Max(in.Index) == 0 && e.Num().Degree(g) == 1 {
+			if err := k.RelateClosed(e, g, number); err == nil {
+				return g, nil
+			}
+		}
 	}
 	return x.orientSquare(e, number)
 }

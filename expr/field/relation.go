@@ -22,6 +22,7 @@ type rule struct {
 	leader  Gen
 	value   Elem
 	sources []int
+	closed  bool // derivatives of the leader are not replaced: the relation's derivative holds anyway
 }
 
 // Rule is a relation as it stands: leader → value.
@@ -62,6 +63,7 @@ type posted struct {
 	leader  Gen
 	hasLead bool
 	sources []int
+	closed  bool
 }
 
 // maxSettling bounds the relations posted while one is worked in.
@@ -69,7 +71,7 @@ const maxSettling = 400
 
 // RelateGen adds the relation g = rhs with leader g; source is the caller's number for it.
 func (f *Field) RelateGen(g Gen, rhs Elem, source int) error {
-	return f.settle([]posted{{f.Raw(g).Sub(rhs), g, true, []int{source}}})
+	return f.settle([]posted{{rest: f.Raw(g).Sub(rhs), leader: g, hasLead: true, sources: []int{source}}})
 }
 
 // Relate adds the relation e = 0; the leader is the highest jet in which it is linear.
@@ -138,7 +140,7 @@ func (f *Field) workIn(p posted) ([]posted, error) {
 	}
 	rest = rest.Lowest()
 	n, assumed := f.squareFreeUnknown(rest)
-	asked := p.hasLead && f.canLead(p.leader, n) // also a constant, where one is asked for
+	asked := p.hasLead && f.canLead(p.leader, n) || p.closed && n.Degree(p.leader) == 1 // also a constant, where one is asked for
 	if n.IsConst() || !f.holdsJet(n) && !asked {
 		follows := rest
 		if !n.IsConst() {
@@ -156,7 +158,7 @@ func (f *Field) workIn(p posted) ([]posted, error) {
 	lead := Elem{f: f, num: c[1]}
 	f.AssumeNonzero(lead, "the relation for "+f.plainName(leader)+" divides by it")
 	value := Elem{f: f, num: c[0].Neg()}.Div(lead).Lowest()
-	return f.install(&rule{leader, value, sources}), nil
+	return f.install(&rule{leader, value, sources, p.closed && !f.canLead(leader, n)}), nil
 }
 
 // squareFreeUnknown is the product of the factors of e that are not known to be non-zero,
@@ -299,7 +301,7 @@ func (f *Field) install(r *rule) []posted {
 	var again []posted
 	takeBack := func(old *rule) {
 		f.gens[old.leader].rule = nil
-		again = append(again, posted{f.Raw(old.leader).Sub(old.value), old.leader, true, old.sources})
+		again = append(again, posted{f.Raw(old.leader).Sub(old.value), old.leader, true, old.sources, old.closed})
 	}
 	chains := map[*FreeFunc]int{}
 	for _, gen := range f.gens {
@@ -394,7 +396,7 @@ func (f *Field) fixed(g Gen) bool {
 	gen := f.gens[g]
 	switch {
 	case gen.rule != nil:
-		return true
+		return !gen.rule.closed
 	case gen.Kind == Function:
 		return f.hasLowerRule(g)
 	case gen.Kind == FreeFunction:
@@ -475,7 +477,23 @@ func mergeSources(a, b []int) []int {
 
 // RelateFor adds the relation e = 0 with the given leader, where e is linear in it.
 func (f *Field) RelateFor(e Elem, leader Gen, source int) error {
-	return f.settle([]posted{{e, leader, true, []int{source}}})
+	return f.settle([]posted{{rest: e, leader: leader, hasLead: true, sources: []int{source}}})
+}
+
+// RelateClosed adds the relation e = 0 with a leader of which derivatives may stand in e too,
+// such as P in 3M²H² + P − φ′²P,X = 0. It is for a relation whose own derivative follows from the
+// relations that stand: only the leader is replaced, and none of its derivatives. It fails
+// with *Unsolvable where e is not linear in the leader or the derivative does not follow.
+func (f *Field) RelateClosed(e Elem, leader Gen, source int) error {
+	err := f.settle([]posted{{rest: e, leader: leader, hasLead: true, sources: []int{source}, closed: true}})
+	if err != nil {
+		return err
+	}
+	left := f.genDeriv(leader).Sub(f.value(leader).D())
+	if left, err = left.Normal(); err != nil || !left.IsZero() {
+		return &Unsolvable{Sources: []int{source}, Rest: left}
+	}
+	return nil
 }
 
 // CanLead reports whether the relation e = 0 could be solved for g: the numerator of e is
