@@ -154,6 +154,9 @@ func (x *expansion) neededRelation() string {
 	if x.m.ADM != nil {
 		return "a function of time is needed that it fixes, or a relation: given H' = …"
 	}
+	if len(x.m.Eigenfunctions) > 0 {
+		return "conditions on the form factor are needed, such as: given F.1(r1) = 0 and given F(r1) = M^2/(6*r1)"
+	}
 	return "a relation is needed: given phi' = …"
 }
 

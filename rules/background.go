@@ -243,12 +243,8 @@ func (x *expansion) relationError(eq Equation, rest field.Elem, err error) error
 	case errors.As(err, &bad):
 		return x.noSolution(eq, bad.Follows)
 	case errors.As(err, &stuck):
-		hint := "a relation is needed: given phi' = …"
-		if len(x.m.Eigenfunctions) > 0 {
-			hint = "conditions on the form factor are needed, such as: given F.1(r1) = 0 and given F(r1) = M^2/(6*r1)"
-		}
 		return x.refuse(NoLeader, x.m.LagrangianSpan,
-			fmt.Sprintf("the background equation of %s can be solved for none of its quantities: %s = 0", eq.From, show(rest)), hint)
+			fmt.Sprintf("the background equation of %s can be solved for none of its quantities: %s = 0", eq.From, show(rest)), x.neededRelation())
 	}
 	return err
 }
