@@ -44,6 +44,8 @@ func contentsOf(r *reduce.Result) ([]quantity, error) {
 		return singleContents(r.Variable, r.Single), nil
 	case r.Several != nil:
 		return severalContents(r)
+	case r.FormFactor != nil:
+		return nil, fmt.Errorf("code for an action with a form factor is not yet supported")
 	}
 	return nil, fmt.Errorf("nothing propagates in this model, so there is no code to write")
 }
