@@ -3,8 +3,9 @@ package reduce
 // The choice of the next pivot: a field of order 0 on the diagonal, or a multiplier with a
 // partner to which it is joined without derivatives. The kept field is no pivot. Of several,
 // the one whose determinant has the fewest terms; of these a pair before a single field, since
-// it removes two under one condition; then the lowest degree; then the first as declared. The
-// choice is deterministic.
+// it removes two under one condition, and a partner without dynamics of its own before one that
+// has them, whose derivatives would move into the other fields; then the lowest degree; then
+// the first as declared. The choice is deterministic.
 
 import "remnant/expr/field"
 
@@ -12,6 +13,7 @@ import "remnant/expr/field"
 type pivot struct {
 	p, q   int
 	terms  int
+	order  int // of the partner's diagonal entry
 	degree int
 }
 
@@ -21,6 +23,8 @@ func (a pivot) before(b pivot) bool {
 		return a.terms < b.terms
 	case (a.q < 0) != (b.q < 0):
 		return a.q >= 0
+	case a.order != b.order:
+		return a.order < b.order
 	case a.degree != b.degree:
 		return a.degree < b.degree
 	case a.p != b.p:
@@ -53,11 +57,11 @@ func (s System) pivots(keep int) []pivot {
 		}
 		switch d := s.D.At(p, p); d.Order() {
 		case 0:
-			all = append(all, pivot{p, -1, d.Coef(0).Num().Len(), d.Coef(0).Num().TotalDegree()})
+			all = append(all, pivot{p, -1, d.Coef(0).Num().Len(), 0, d.Coef(0).Num().TotalDegree()})
 		case -1:
 			for q := range s.Names {
 				if q != keep && q != p && s.D.At(p, q).Order() == 0 {
-					all = append(all, pairPivot(p, q, s.D.At(p, q).Coef(0)))
+					all = append(all, s.pairPivot(p, q, s.D.At(p, q).Coef(0)))
 				}
 			}
 		}
@@ -66,7 +70,7 @@ func (s System) pivots(keep int) []pivot {
 }
 
 // pairPivot rates the determinant −c² of the block; its terms are those of a square.
-func pairPivot(p, q int, c field.Elem) pivot {
+func (s System) pairPivot(p, q int, c field.Elem) pivot {
 	n := c.Num().Len()
-	return pivot{p, q, n * (n + 1) / 2, 2 * c.Num().TotalDegree()}
+	return pivot{p, q, n * (n + 1) / 2, max(s.D.At(q, q).Order(), 0), 2 * c.Num().TotalDegree()}
 }
