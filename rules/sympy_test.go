@@ -6,49 +6,23 @@ package rules
 // is used.
 
 import (
-	"bytes"
 	"encoding/json"
 	"fmt"
 	"maps"
 	"math/big"
 	"math/rand/v2"
 	"os"
-	"os/exec"
 	"path/filepath"
 	"regexp"
 	"slices"
-	"sync"
 	"testing"
 
 	"remnant/expr/field"
 	"remnant/expr/oper"
+	"remnant/expr/outside"
 	"remnant/parse"
 	"remnant/parse/diag"
 )
-
-// hasSymPy asks once: the import takes its time.
-var hasSymPy = sync.OnceValue(func() error { return exec.Command("python3", "-c", "import sympy").Run() })
-
-// python runs a script of testdata, or says why not: a machine without SymPy skips the
-// check, unless CI is set.
-func python(t *testing.T, script string, in []byte) []byte {
-	t.Helper()
-	if err := hasSymPy(); err != nil {
-		if os.Getenv("CI") != "" {
-			t.Fatalf("python3 with sympy is needed where CI is set: %v", err)
-		}
-		t.Skipf("no comparison: python3 with sympy does not run here: %v", err)
-	}
-	cmd := exec.Command("python3", script)
-	cmd.Stdin = bytes.NewReader(in)
-	var problems bytes.Buffer
-	cmd.Stderr = &problems
-	out, err := cmd.Output()
-	if err != nil {
-		t.Fatalf("%s: %v\n%s", script, err, problems.Bytes())
-	}
-	return out
-}
 
 // rational is a big.Rat that JSON writes as a string.
 type rational struct{ *big.Rat }
@@ -348,7 +322,7 @@ func ask(t *testing.T, cases []*variation) []map[string]answer {
 		t.Fatal(err)
 	}
 	var out []map[string]answer
-	if err := json.Unmarshal(python(t, filepath.Join("testdata", "second_variation.py"), in), &out); err != nil {
+	if err := json.Unmarshal(outside.SymPy(t, filepath.Join("testdata", "second_variation.py"), in), &out); err != nil {
 		t.Fatal(err)
 	}
 	if len(out) != len(cases) {

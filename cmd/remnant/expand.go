@@ -4,8 +4,6 @@ package main
 // background equations and the quadratic Lagrangian.
 
 import (
-	"context"
-
 	"github.com/spf13/cobra"
 
 	"remnant/expr/budget"
@@ -15,10 +13,7 @@ import (
 
 // expandOptions are the flags of expand.
 type expandOptions struct {
-	limits
-	layout
-	variant
-	verification
+	job
 	full bool
 }
 
@@ -39,53 +34,18 @@ func expandCommand(std streams) *cobra.Command {
 			if err := o.check(cmd); err != nil {
 				return err
 			}
-			return o.run(cmd.Context(), std, args[0])
+			return o.run(cmd.Context(), std, args[0], func(m *parse.Model, b *budget.Budget) ([]byte, error, error) {
+				return o.compute(std, m, b)
+			})
 		},
 	}
-	o.variant.flags(cmd)
-	o.verification.flags(cmd)
 	cmd.Flags().BoolVar(&o.full, "full", false, "write long coefficients in their places, without names")
-	o.layout.flags(cmd)
-	o.limits.flags(cmd)
+	o.job.flags(cmd)
 	return cmd
 }
 
-func (o *expandOptions) check(cmd *cobra.Command) error {
-	for _, check := range []func(*cobra.Command) error{o.layout.check, o.variant.check, o.verification.check} {
-		if err := check(cmd); err != nil {
-			return err
-		}
-	}
-	return o.limits.check(cmd)
-}
-
-func (o *expandOptions) run(ctx context.Context, std streams, path string) error {
-	b, done := o.budget(ctx)
-	defer done()
-	stop := watch(std.err, b)
-	data, failed, err := o.compute(std, path, b)
-	stop()
-	if err != nil {
-		return err
-	}
-	if err := deliver(std, o.output, data); err != nil {
-		return err
-	}
-	return failed
-}
-
-// compute does all the work, so that nothing is written before it is done; failed is the
-// outcome of a check that did.
-func (o *expandOptions) compute(std streams, path string, b *budget.Budget) (data []byte, failed, err error) {
-	defer budget.Catch(&err)
-	src, err := readSource(std, path)
-	if err != nil {
-		return nil, nil, err
-	}
-	m, err := parse.Load(src, b)
-	if err != nil {
-		return nil, nil, err
-	}
+// compute expands and writes the result.
+func (o *expandOptions) compute(std streams, m *parse.Model, b *budget.Budget) (data []byte, failed, err error) {
 	list, checks, err := o.find(m)
 	if err != nil {
 		return nil, nil, err

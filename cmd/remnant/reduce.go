@@ -3,8 +3,6 @@ package main
 // reduce is the main job: a model in, what remains out.
 
 import (
-	"context"
-
 	"github.com/spf13/cobra"
 
 	"remnant/expr/budget"
@@ -15,10 +13,7 @@ import (
 
 // reduceOptions are the flags of reduce.
 type reduceOptions struct {
-	limits
-	layout
-	variant
-	verification
+	job
 	steps  bool
 	full   bool
 	series int
@@ -49,7 +44,9 @@ func reduceCommand(std streams) *cobra.Command {
 			if err := o.check(cmd); err != nil {
 				return err
 			}
-			return o.run(cmd.Context(), std, args[0])
+			return o.run(cmd.Context(), std, args[0], func(m *parse.Model, b *budget.Budget) ([]byte, error, error) {
+				return o.compute(std, m, b)
+			})
 		},
 	}
 	flags := cmd.Flags()
@@ -57,18 +54,13 @@ func reduceCommand(std streams) *cobra.Command {
 	flags.BoolVar(&o.full, "full", false, "write out long expressions that follow from others")
 	flags.IntVar(&o.series, "series", noSeries, "expand what remains up to this `order`")
 	flags.StringVar(&o.at, "at", "", "give exact values at a `point`: \"H = 1/10; k = 2\", or @FILE")
-	o.variant.flags(cmd)
-	o.verification.flags(cmd)
-	o.layout.flags(cmd)
-	o.limits.flags(cmd)
+	o.job.flags(cmd)
 	return cmd
 }
 
 func (o *reduceOptions) check(cmd *cobra.Command) error {
-	for _, check := range []func(*cobra.Command) error{o.layout.check, o.variant.check, o.verification.check} {
-		if err := check(cmd); err != nil {
-			return err
-		}
+	if err := o.job.check(cmd); err != nil {
+		return err
 	}
 	switch {
 	case o.series != noSeries && o.series < 0, o.series > maxSeries:
@@ -76,36 +68,11 @@ func (o *reduceOptions) check(cmd *cobra.Command) error {
 	case cmd.Flags().Changed("at") && o.at == "":
 		return usage(cmd, "--at needs a point, such as \"H = 1/10; k = 2\"")
 	}
-	return o.limits.check(cmd)
+	return nil
 }
 
-func (o *reduceOptions) run(ctx context.Context, std streams, path string) error {
-	b, done := o.budget(ctx)
-	defer done()
-	stop := watch(std.err, b)
-	data, failed, err := o.compute(std, path, b)
-	stop()
-	if err != nil {
-		return err
-	}
-	if err := deliver(std, o.output, data); err != nil {
-		return err
-	}
-	return failed
-}
-
-// compute does all the work, so that nothing is written before it is done; failed is the
-// outcome of a check that did.
-func (o *reduceOptions) compute(std streams, path string, b *budget.Budget) (data []byte, failed, err error) {
-	defer budget.Catch(&err)
-	src, err := readSource(std, path)
-	if err != nil {
-		return nil, nil, err
-	}
-	m, err := parse.Load(src, b)
-	if err != nil {
-		return nil, nil, err
-	}
+// compute reduces and writes the result.
+func (o *reduceOptions) compute(std streams, m *parse.Model, b *budget.Budget) (data []byte, failed, err error) {
 	list, err := o.find(std, m)
 	if err != nil {
 		return nil, nil, err

@@ -5,15 +5,19 @@ import (
 	"bytes"
 	"os"
 	"os/exec"
+	"sync"
 	"testing"
 )
+
+// hasSymPy asks once: the import takes its time.
+var hasSymPy = sync.OnceValue(func() error { return exec.Command("python3", "-c", "import sympy").Run() })
 
 // SymPy runs a Python script that uses SymPy, with in as its standard input, and returns its
 // output. On a machine without SymPy the test is skipped with that reason; where the
 // environment variable CI is set, it fails.
 func SymPy(t testing.TB, script string, in []byte) []byte {
 	t.Helper()
-	if err := exec.Command("python3", "-c", "import sympy").Run(); err != nil {
+	if err := hasSymPy(); err != nil {
 		if os.Getenv("CI") != "" {
 			t.Fatalf("python3 with sympy is needed where CI is set: %v", err)
 		}
