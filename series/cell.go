@@ -104,15 +104,21 @@ func (z *finder) separate(c cell, skip func(cell) bool) []found {
 			return []found{s}
 		}
 	}
-	if c.size() < z.scale*0x1p-32 {
-		r := math.Hypot(c.hi.x-c.lo.x, c.hi.y-c.lo.y) / 2 * (1 + 1e-9)
-		return []found{{(c.lo.x + c.hi.x) / 2, (c.lo.y + c.hi.y) / 2, r + z.scale*0x1p-50, n, nil}}
+	if c.size() < z.resolution(c) {
+		r := math.Hypot(c.hi.x-c.lo.x, c.hi.y-c.lo.y) / 2
+		return []found{{(c.lo.x + c.hi.x) / 2, (c.lo.y + c.hi.y) / 2, r * (1 + 1e-9), n, nil}}
 	}
 	var out []found
 	for _, part := range z.split(c) {
 		out = append(out, z.separate(part, skip)...)
 	}
 	return out
+}
+
+// resolution is the size of rectangle that is not cut any more: eleven digits of where it is.
+func (z *finder) resolution(c cell) float64 {
+	far := max(math.Abs(c.lo.x), math.Abs(c.hi.x), math.Abs(c.lo.y), math.Abs(c.hi.y))
+	return max(far, z.scale*0x1p-30) * 0x1p-36
 }
 
 // rational recognises an n-fold zero at the simplest rational number in the rectangle.

@@ -6,6 +6,7 @@ package series
 
 import (
 	"math/big"
+	"slices"
 	"strconv"
 	"strings"
 )
@@ -130,7 +131,8 @@ func (f sumNode) text(arg string) string {
 // productNode is Π f.
 type productNode struct{ list []node }
 
-// makeProduct collects the polynomials of the list into one, which stands first.
+// makeProduct collects the polynomials of the list into one, which stands first and undoes
+// divisions by s as far as it holds that factor.
 func makeProduct(list []node) node {
 	p := IntUniPoly(1)
 	var rest []node
@@ -148,6 +150,13 @@ func makeProduct(list []node) node {
 			}
 		default:
 			rest = append(rest, f)
+		}
+	}
+	for i, f := range rest { // s·(f/s) = f
+		d, isDivision := f.(divideNode)
+		q, divisible := p.divideByS()
+		if isDivision && divisible && !p.IsZero() {
+			return makeProduct(append([]node{polyNode{q}, d.f}, slices.Delete(rest, i, i+1)...))
 		}
 	}
 	switch {

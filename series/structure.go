@@ -33,7 +33,11 @@ func (s structure) node() node {
 	return makeProduct(list)
 }
 
+// structureOf tries the normal form of exponentials first, then takes the function apart.
 func structureOf(n node) structure {
+	if s, ok := structureOfExpPoly(n); ok {
+		return s
+	}
 	one := IntUniPoly(1)
 	switch f := n.(type) {
 	case polyNode:
@@ -68,10 +72,6 @@ func structureOf(n node) structure {
 			s.poly = p
 			return s
 		}
-	case sumNode:
-		if s, ok := structureOfSum(f); ok {
-			return s
-		}
 	}
 	return structure{poly: one, rest: []powerNode{{n, 1}}}
 }
@@ -95,19 +95,6 @@ func structureOfPolynomial(p UniPoly, g node) structure {
 	return out.times(structure{IntUniPoly(1), nil, []powerNode{{composeNode{polyNode{p}, g}, 1}}})
 }
 
-// structureOfSum adds terms that have the same exponential and no other factor.
-func structureOfSum(f sumNode) (structure, bool) {
-	var out structure
-	for i, g := range f.list {
-		s := structureOf(g)
-		if len(s.rest) > 0 || i > 0 && !sameSum(out.exps, s.exps) {
-			return structure{}, false
-		}
-		out = structure{poly: out.poly.Add(s.poly), exps: s.exps}
-	}
-	return out, true
-}
-
 // compose is the structure of f(q(s)).
 func (s structure) compose(q polyNode) structure {
 	out := structure{poly: s.poly.Compose(q.p)}
@@ -120,7 +107,8 @@ func (s structure) compose(q polyNode) structure {
 	return out
 }
 
-// times is the structure of the product; equal factors come together.
+// times is the structure of the product; equal factors come together, and a factor s of the
+// polynomial undoes a division.
 func (s structure) times(t structure) structure {
 	out := structure{s.poly.Mul(t.poly), slices.Concat(s.exps, t.exps), slices.Clone(s.rest)}
 	for _, r := range t.rest {
@@ -131,11 +119,29 @@ func (s structure) times(t structure) structure {
 			out.rest[i].k += r.k
 		}
 	}
-	return out
+	return out.cancel()
 }
 
-// sameSum reports whether two exponents are the same function, as far as their form shows.
-func sameSum(a, b []node) bool { return same(makeSum(a), makeSum(b)) }
+// cancel uses factors s of the polynomial to undo divisions by s.
+func (s structure) cancel() structure {
+	if s.poly.IsZero() {
+		return s
+	}
+	for i, r := range s.rest {
+		f, isDivision := r.f.(divideNode)
+		p, divisible := s.poly.divideByS()
+		if !isDivision || !divisible {
+			continue
+		}
+		s.poly = p
+		s.rest = slices.Delete(slices.Clone(s.rest), i, i+1)
+		if r.k > 1 {
+			s.rest = append(s.rest, powerNode{f, r.k - 1})
+		}
+		return s.times(structureOf(f.f))
+	}
+	return s
+}
 
 // same reports whether two nodes are built alike; rules are alike only if they are one.
 func same(a, b node) bool {

@@ -123,7 +123,8 @@ func circle(x, y, r float64) curve {
 
 // around counts the zeros inside a circle.
 func (z *finder) around(x, y, r float64) (int, *uncovered) {
-	values, gap := z.cover(circle(x, y, r), r*0x1p-34)
+	least := max(r*0x1p-34, (math.Abs(x)+math.Abs(y)+r)*1e-12)
+	values, gap := z.cover(circle(x, y, r), least)
 	if gap != nil {
 		return 0, gap
 	}
@@ -134,7 +135,7 @@ func (z *finder) around(x, y, r float64) (int, *uncovered) {
 type point struct{ x, y float64 }
 
 // segment is the change of argument from p to q; false if the function cannot be kept from
-// zero with discs of at least the given size.
+// zero with discs of at least the given size, or of what rounding leaves.
 func (z *finder) segment(p, q point, least float64) (float64, *uncovered) {
 	slack := (math.Abs(p.x) + math.Abs(p.y) + math.Abs(q.x) + math.Abs(q.y)) * 1e-14
 	half := math.Hypot(q.x-p.x, q.y-p.y) / 2
@@ -142,7 +143,7 @@ func (z *finder) segment(p, q point, least float64) (float64, *uncovered) {
 		w := (u + v) / 2
 		return p.x + (q.x-p.x)*w, p.y + (q.y-p.y)*w, half*(v-u)*(1+1e-9) + slack
 	}
-	values, gap := z.cover(path, least)
+	values, gap := z.cover(path, max(least, 4*slack))
 	if gap != nil {
 		return 0, gap
 	}
