@@ -56,6 +56,16 @@ func (d *FormFactorDecl) Value(k *field.Field, n int, r field.Elem) field.Elem {
 	return k.Gen(g)
 }
 
+// ValueOf tells for which n and r the constant g is F.n(r); false if it is none.
+func (d *FormFactorDecl) ValueOf(g field.Gen) (n int, r field.Elem, ok bool) {
+	for _, v := range d.values {
+		if v.gen == g {
+			return v.n, v.at, true
+		}
+	}
+	return 0, field.Elem{}, false
+}
+
 // Remainder is the form factor Z of F(x) = F(r) + F'(r)(x − r) + (x − r)²Z(x), as entire as F.
 func (d *FormFactorDecl) Remainder(r field.Elem) *FormFactorDecl {
 	for _, z := range d.remainders {

@@ -23,6 +23,10 @@ const (
 	//	keep v
 	KeptField diag.Kind = "kept field does not propagate"
 
+	// Undefined: a question that needs numbers or a definition which the model lacks. A test of
+	// the zeros makes the example.
+	Undefined diag.Kind = "number or definition missing"
+
 	// GaugeDirection: the action does not change in some direction, for every k.
 	//
 	// Example:

@@ -6,6 +6,7 @@ Usage:
 
 	remnant reduce FILE [flags]
 	remnant expand FILE [flags]
+	remnant poles FILE [flags]
 	remnant tidy FILE… [-w | --check]
 	remnant notation
 	remnant code FILE -o DIR
@@ -71,6 +72,22 @@ it; --full writes them in their places. A quadratic model has nothing to expand;
 and its Lagrangian are printed. Expand takes --format, --gauge, --sector, --check, -o, --ascii,
 --width, --limit-terms and --limit-time as reduce does. Its JSON is documented at the type
 ExpansionDocument of package reduce; the Lagrangian in it can be read back.
+
+# poles
+
+Poles reduces an action with a form factor to W(s) and counts its zeros in the disc |s| < R, s the
+eigenvalue of the background d'Alembertian: with proof, or it says that there is none and what
+is known, with exit status 3. Each zero is enclosed and judged: healthy, ghost, tachyon, complex
+pair, multiple. The form factor needs a definition or a rule for its Taylor coefficients, and the
+constants need numbers in the model.
+
+	--radius R
+		The radius of the disc (10).
+	--truncate N
+		Mark the zeros that W cut after sᴺ has and W has not.
+
+It takes --format, -o, --ascii, --width, --limit-terms and --limit-time as reduce does. Its JSON
+is documented at the type PolesDocument of package reduce.
 
 # tidy
 

@@ -95,6 +95,7 @@ func report(w io.Writer, err error) int {
 		stop    *budget.Stop
 		refused *refusal
 		check   *differs
+		open    *unproven
 	)
 	switch {
 	case err == nil:
@@ -106,6 +107,9 @@ func report(w io.Writer, err error) int {
 		return statusRefused
 	case errors.As(err, &stop):
 		fmt.Fprintf(w, "remnant: %v\n", stop)
+		return statusStopped
+	case errors.As(err, &open):
+		fmt.Fprintf(w, "remnant: %s\n", open.Error())
 		return statusStopped
 	case errors.As(err, &check):
 		fmt.Fprintf(w, "remnant: %s\n", check.summary)

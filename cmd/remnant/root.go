@@ -36,7 +36,7 @@ func newRoot(std streams) *cobra.Command {
 	root.SetErr(std.err)
 	root.SetVersionTemplate("remnant {{.Version}}\n")
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error { return usage(cmd, err.Error()) })
-	root.AddCommand(reduceCommand(std), expandCommand(std), tidyCommand(std), notationCommand(std), codeCommand(std), versionCommand(std))
+	root.AddCommand(reduceCommand(std), expandCommand(std), polesCommand(std), tidyCommand(std), notationCommand(std), codeCommand(std), versionCommand(std))
 	for _, c := range root.Commands() {
 		c.DisableFlagsInUseLine = true
 	}
