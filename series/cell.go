@@ -99,8 +99,9 @@ func (z *finder) separate(c cell, skip func(cell) bool) []found {
 	if s, ok := z.rational(c, n); ok {
 		return []found{s}
 	}
-	if n == 1 {
-		if s, ok := z.refine((c.lo.x+c.hi.x)/2, (c.lo.y+c.hi.y)/2, c.size()); ok && c.holds(s.x, s.y, s.r) {
+	if n < modelOrder-1 {
+		x, y, ok := z.newton((c.lo.x+c.hi.x)/2, (c.lo.y+c.hi.y)/2, c.size(), n)
+		if s, ok := z.enclose(c, x, y, n, ok); ok && c.holds(s.x, s.y, s.r) {
 			return []found{s}
 		}
 	}
@@ -146,24 +147,42 @@ func (z *finder) rationalIn(lo, hi float64, n int) (found, bool) {
 	return found{ratFloat(x), 0, 0, n, x}, true
 }
 
-// refine follows Newton's method from a point and proves, by the linear term of a model, a
-// disc with exactly one zero. This is the disc form of the test of Krawczyk.
-func (z *finder) refine(x, y, size float64) (found, bool) {
+// newton follows Newton's method for the (n−1)-th derivative from a point, to a zero or to the
+// centre of n zeros that lie together.
+func (z *finder) newton(x, y, size float64, n int) (float64, float64, bool) {
 	for step := size; step > 0; {
-		m := z.model(x, y, max(step, z.scale*0x1p-40)*0x1p-4)
-		dx, dy, ok := newtonStep(m, max(step, z.scale*0x1p-40)*0x1p-4)
+		rho := max(step, z.scale*0x1p-40) * 0x1p-4
+		dx, dy, ok := newtonStep(z.model(x, y, rho), rho, n)
 		length := math.Hypot(dx, dy)
 		if !ok || length > 2*step {
-			return found{}, false
+			return 0, 0, false
 		}
 		x, y = x+dx, y+dy
 		if length < (math.Abs(x)+math.Abs(y))*0x1p-50 || length >= step/2 && step < z.scale*0x1p-30 {
 			break
 		}
-		if length > step*0.75 {
-			length = step * 0.75
+		step = min(length, step*0.75)
+	}
+	return x, y, true
+}
+
+// enclose proves, by the n-th term of a model, a small disc with exactly n zeros around a point
+// that newton found. For n = 1 this is the disc form of the test of Krawczyk.
+func (z *finder) enclose(c cell, x, y float64, n int, ok bool) (found, bool) {
+	if !ok {
+		return found{}, false
+	}
+	if n > 1 {
+		r := z.resolution(c)
+		if math.Abs(y) < r {
+			y = 0
 		}
-		step = length
+		// Zeros that lie apart show on a larger scale, at less cost.
+		if _, ok := z.pellet(n, x, y, max(c.size()*0x1p-6, r)); !ok {
+			return found{}, false
+		}
+		_, ok := z.pellet(n, x, y, r)
+		return found{x, y, r, n, nil}, ok
 	}
 	r := max(math.Hypot(x, y)*0x1p-46, z.scale*0x1p-56)
 	for range 6 {
@@ -193,13 +212,13 @@ func (z *finder) one(x, y, r float64) (found, bool) {
 	return found{x, y, r, 1, nil}, true
 }
 
-// newtonStep is −a₀/a₁·ρ.
-func newtonStep(m model, rho float64) (dx, dy float64, ok bool) {
-	r0, i0, e0 := m.a[0].approx()
-	r1, i1, e1 := m.a[1].approx()
+// newtonStep is −a_{n−1}/(n a_n)·ρ.
+func newtonStep(m model, rho float64, n int) (dx, dy float64, ok bool) {
+	r0, i0, e0 := m.a[n-1].approx()
+	r1, i1, e1 := m.a[n].approx()
 	if r1 == 0 && i1 == 0 || math.Abs(float64(e0-e1)) > 900 && (r0 != 0 || i0 != 0) {
 		return 0, 0, r0 == 0 && i0 == 0
 	}
-	d := -complex(r0, i0) / complex(r1, i1) * complex(math.Ldexp(rho, e0-e1), 0)
+	d := -complex(r0, i0) / complex(r1, i1) * complex(math.Ldexp(rho, e0-e1)/float64(n), 0)
 	return real(d), imag(d), !math.IsNaN(real(d)) && !math.IsInf(real(d), 0)
 }

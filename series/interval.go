@@ -26,11 +26,15 @@ type wideMid struct{ re, im *big.Float }
 // narrowBits is the precision of middles that are kept in float64.
 const narrowBits = 53
 
-// Arith is complex arithmetic with a given precision of middles, in bits, at least 53.
-type Arith struct{ prec uint }
+// Arith is complex arithmetic with a given precision of middles, in bits, at least 53. It is
+// safe for concurrent use.
+type Arith struct {
+	prec uint
+	kept *expTable
+}
 
 // NewArith returns arithmetic with at least bits bits.
-func NewArith(bits int) Arith { return Arith{uint(max(bits, narrowBits))} }
+func NewArith(bits int) Arith { return Arith{uint(max(bits, narrowBits)), newExpTable()} }
 
 // flush is the size below which one part of a narrow middle is moved into the radius, so
 // that no product of parts underflows.
@@ -302,45 +306,4 @@ func (a Arith) Inv(u Disc) (Disc, bool) {
 func (a Arith) Div(u, v Disc) (Disc, bool) {
 	w, ok := a.Inv(v)
 	return a.Mul(u, w), ok
-}
-
-// Exp is e^u: the Taylor polynomial of the exponential of u/2^k, squared k times, with
-// guard bits for the squarings. Where |u| passes 2²⁷ nothing useful is returned.
-func (a Arith) Exp(u Disc) Disc {
-	n := u.midUp()
-	if n.e > 27 {
-		return Disc{rad: u.norm().exp()}
-	}
-	k := max(0, n.e+8)
-	w := Arith{a.prec + uint(k) + 16}
-	re, im := u.parts()
-	z := w.disc(re, im, mag{})
-	z = w.scale2(z, -k)
-	terms := int(w.prec)/8 + 2
-	// Σ zⁿ/n! from the innermost bracket: 1 + z(1 + z/2(1 + z/3(…))).
-	out := w.Rat(big.NewRat(1, 1), new(big.Rat))
-	one := out
-	for i := terms; i >= 1; i-- {
-		out = w.Add(one, w.Mul(out, w.Mul(z, w.Rat(big.NewRat(1, int64(i)), new(big.Rat)))))
-	}
-	// |z| < 2⁻⁸, so the rest is below twice its first term, and that below 2^(−8(terms+1)).
-	out = out.enlarge(mag{0.5, 2 - 8*(terms+1)})
-	for range k {
-		out = w.Mul(out, out)
-	}
-	re, im = out.parts()
-	out = a.disc(re, im, out.rad)
-	return out.enlarge(out.norm().mul(u.rad.expm1()))
-}
-
-// Cos is cos u = (e^{iu} + e^{−iu})/2.
-func (a Arith) Cos(u Disc) Disc {
-	iu := a.Mul(a.Point(0, 1), u)
-	return a.scale2(a.Add(a.Exp(iu), a.Exp(a.Neg(iu))), -1)
-}
-
-// Sin is sin u = (e^{iu} − e^{−iu})/2i.
-func (a Arith) Sin(u Disc) Disc {
-	iu := a.Mul(a.Point(0, 1), u)
-	return a.Mul(a.Point(0, -1), a.scale2(a.Sub(a.Exp(iu), a.Exp(a.Neg(iu))), -1))
 }

@@ -191,7 +191,7 @@ func (ev *evaluator) exponential(c Disc, rho mag) model {
 	term := ev.Exp(c)
 	for j := range out.a {
 		out.a[j] = term
-		term = ev.Mul(ev.Mul(term, r), ev.rat(big.NewRat(1, int64(j+1))))
+		term = ev.Mul(ev.Mul(term, r), ev.reciprocalInt(j+1))
 	}
 	// Σ_{j≥J} ρʲ/j! ≤ ρᴶ/J!·e^ρ.
 	out.eps = term.norm().mul(rho.exp())

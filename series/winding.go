@@ -121,14 +121,25 @@ func circle(x, y, r float64) curve {
 	}
 }
 
-// around counts the zeros inside a circle.
+// around counts the zeros inside a circle. Around a point of the real axis the lower half
+// mirrors the upper one, as the function is real on the axis.
 func (z *finder) around(x, y, r float64) (int, *uncovered) {
+	path := circle(x, y, r)
 	least := max(r*0x1p-34, (math.Abs(x)+math.Abs(y)+r)*1e-12)
-	values, gap := z.cover(circle(x, y, r), least)
+	if y != 0 {
+		values, gap := z.cover(path, least)
+		if gap != nil {
+			return 0, gap
+		}
+		return turns(turning(append(values, values[0]))), nil
+	}
+	half := func(u, v float64) (float64, float64, float64) { return path(u/2, v/2) }
+	values, gap := z.cover(half, least)
 	if gap != nil {
 		return 0, gap
 	}
-	return turns(turning(append(values, values[0]))), nil
+	from, to := z.value(point{x + r, 0}), z.value(point{x - r, 0})
+	return turns(2 * turning(append(append([]complex128{from}, values...), to))), nil
 }
 
 // point is a point of the plane.
