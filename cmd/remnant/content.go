@@ -21,6 +21,7 @@ type findings struct {
 	*reduce.Result
 	expansions []*reduce.Expansion
 	values     *reduce.Values
+	lowered    *reduce.Lowered
 	check      *reduce.GaugeCheck
 	steps      bool // show the action after each step
 	full       bool // write out long expressions that follow from others
@@ -48,7 +49,7 @@ func pageOf(f *findings) *page {
 	short.Result = f.Result.Abbreviated()
 	f = &short
 	p := &page{title: titleOf(f.Model), head: f.head()}
-	for _, s := range []*section{f.solved(), f.remains(), f.series(), f.atPoint(), checkSection(f.check)} {
+	for _, s := range []*section{f.solved(), f.remains(), f.effective(), f.series(), f.atPoint(), checkSection(f.check)} {
 		if s != nil {
 			p.sections = append(p.sections, *s)
 		}

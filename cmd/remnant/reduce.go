@@ -3,6 +3,8 @@ package main
 // reduce is the main job: a model in, what remains out.
 
 import (
+	"errors"
+
 	"github.com/spf13/cobra"
 
 	"remnant/expr/budget"
@@ -148,6 +150,9 @@ func (o *reduceOptions) find(std streams, m *parse.Model) ([]*findings, error) {
 		if f.expansions, err = o.expansions(r); err != nil {
 			return nil, err
 		}
+		if f.lowered, err = lowered(r); err != nil {
+			return nil, err
+		}
 		if point != nil {
 			if f.values, err = r.At(point); err != nil {
 				return nil, err
@@ -186,4 +191,18 @@ func (o *reduceOptions) expansions(r *reduce.Result) ([]*reduce.Expansion, error
 		}
 	}
 	return out, nil
+}
+
+// lowered is the effective action of second order where higher derivatives are small; nil where
+// they are not a perturbation of one.
+func lowered(r *reduce.Result) (*reduce.Lowered, error) {
+	low, err := r.Lower()
+	var stop *budget.Stop
+	if errors.As(err, &stop) {
+		return nil, err
+	}
+	if err != nil {
+		return nil, nil
+	}
+	return low, nil
 }
