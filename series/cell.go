@@ -7,6 +7,7 @@ package series
 import (
 	"math"
 	"math/big"
+	"math/cmplx"
 )
 
 // cell is a rectangle with the changes of argument along its sides, each to the right or
@@ -220,5 +221,5 @@ func newtonStep(m model, rho float64, n int) (dx, dy float64, ok bool) {
 		return 0, 0, r0 == 0 && i0 == 0
 	}
 	d := -complex(r0, i0) / complex(r1, i1) * complex(math.Ldexp(rho, e0-e1)/float64(n), 0)
-	return real(d), imag(d), !math.IsNaN(real(d)) && !math.IsInf(real(d), 0)
+	return real(d), imag(d), !cmplx.IsNaN(d) && !cmplx.IsInf(d)
 }

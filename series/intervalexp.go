@@ -27,9 +27,13 @@ const maxKept = 1 << 14
 
 func newExpTable() *expTable { return &expTable{val: map[expKey]Disc{}} }
 
-// Exp is e^u. Where |u| passes 2²⁷ nothing useful is returned.
+// maxExpBits bounds arguments by 2^maxExpBits, so that exponents of results and of their
+// products stay far from the limits of big.Float.
+const maxExpBits = 22
+
+// Exp is e^u. Where |u| passes 2^maxExpBits only a bound is returned.
 func (a Arith) Exp(u Disc) Disc {
-	if u.midUp().e > 27 {
+	if u.midUp().e > maxExpBits {
 		return Disc{rad: u.norm().exp()}
 	}
 	m := a.expPoint(u.exactMid())

@@ -42,7 +42,7 @@ type ruleNode struct {
 
 // Rule is the function Σ F(n) sⁿ named name. The function F must be deterministic and fast
 // for small n; its values are not changed. The bound is checked against every coefficient
-// that is used, and Rule fails where the bound is none: C or R negative, P or Q not positive.
+// that an enclosure uses (*GrowthError), and Rule fails where the bound is none: C or R negative, P or Q not positive.
 func Rule(name string, coef func(n int) *big.Rat, g Growth) (Entire, error) {
 	if g.C == nil || g.R == nil || g.C.Sign() < 0 || g.R.Sign() < 0 || g.P <= 0 || g.Q <= 0 {
 		return Entire{}, fmt.Errorf("the growth bound of %s needs C, R ≥ 0 and P, Q > 0", name)
@@ -61,11 +61,14 @@ func (f *ruleNode) extend(n int) {
 		if k > 0 {
 			b = f.bound[k-1].mul(magOfRat(f.g.R)).mul(inversePower(k, f.g.P, f.g.Q))
 		}
-		c := f.coef(k)
-		if size := magOfRat(c); b.less(size.mul(mag{1 - 0x1p-40, 0})) {
-			panic(&GrowthError{f.name, k, c})
-		}
-		f.exact, f.bound = append(f.exact, c), append(f.bound, b)
+		f.exact, f.bound = append(f.exact, f.coef(k)), append(f.bound, b)
+	}
+}
+
+// check panics with a *GrowthError if coefficient n is known to break the bound.
+func (f *ruleNode) check(n int) {
+	if f.bound[n].less(magOfRat(f.exact[n]).mul(mag{1 - 0x1p-40, 0})) {
+		panic(&GrowthError{f.name, n, f.exact[n]})
 	}
 }
 
@@ -95,6 +98,7 @@ func (f *ruleNode) upTo(ev *evaluator, r mag) (coefs []Disc, rest mag) {
 	for n := 0; ; n++ {
 		ev.budget.Check(n)
 		f.extend(n + 1)
+		f.check(n)
 		term := f.bound[n].mul(power)
 		halves := step.mul(inversePower(n+1, f.g.P, f.g.Q)).less(mag{0.5, 0})
 		if halves && n > 0 && !top.mul(mag{0.5, -int(ev.prec)}).less(term) {

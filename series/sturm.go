@@ -256,21 +256,16 @@ func countInDisc(p UniPoly, centre, radius *big.Rat, b *budget.Budget) (n int, e
 		return 0, true
 	}
 	re, im := onCircle(p, centre, radius)
-	A, B := re.integralPair(im)
-	chain := sturmChain(A, B, b)
+	// Primitive multiples do: positive factors do not change signs.
+	chain := sturmChain(re.integral(), im.integral(), b)
 	if g := chain[len(chain)-1]; len(g) > 1 {
-		gp := make([]*big.Rat, len(g))
-		for i, c := range g {
-			gp[i] = new(big.Rat).SetInt(c)
-		}
-		own := sturmChain(g, trim(gp).Deriv().integral(), b)
+		own := sturmChain(g, g.rational().Deriv().integral(), b)
 		if variationsAtInfinity(own, -1) != variationsAtInfinity(own, 1) {
 			return 0, true
 		}
 	}
-	// V(−∞) − V(∞) is the Cauchy index of B/A. A pole of B/A at t = ∞ never counts: B/A
-	// changes sign there or not, but deg(A + iB) = n always, as p does not vanish at t = ∞;
-	// the parity that it costs is restored by turning A + iB so that A has degree n.
+	// V(−∞) − V(∞) is the Cauchy index of B/A over the real line. B/A has no pole at t = ∞,
+	// as A has degree n.
 	index := variationsAtInfinity(chain, -1) - variationsAtInfinity(chain, 1)
 	return (p.Degree() - index) / 2, false
 }
@@ -296,7 +291,3 @@ func onCircle(p UniPoly, centre, radius *big.Rat) (re, im UniPoly) {
 	}
 	return re, im
 }
-
-// integralPair multiplies p and q to integer polynomials; a common positive factor, or one
-// of each, does not change a Cauchy index.
-func (p UniPoly) integralPair(q UniPoly) (a, b intPoly) { return p.integral(), q.integral() }

@@ -124,6 +124,14 @@ func (d disc) side(s found) int {
 	return 0
 }
 
+// placed panics where float64 cannot place discs in the region.
+func (d disc) placed() {
+	const most = 1e100
+	if !(d.r < most && d.r > 1/most && math.Abs(d.x) < d.r*0x1p20) {
+		panic(stuck{"the disc is too large, too small or too far away for its zeros to be placed"})
+	}
+}
+
 // newFinder prepares a search in the disc.
 func newFinder(f node, d disc, opt ZeroOptions) *finder {
 	n := opt.Models
@@ -137,11 +145,14 @@ func newFinder(f node, d disc, opt ZeroOptions) *finder {
 func run(step func()) (reason string) {
 	defer func() {
 		if v := recover(); v != nil {
-			s, ok := v.(stuck)
-			if !ok {
+			switch s := v.(type) {
+			case stuck:
+				reason = s.reason
+			case big.ErrNaN:
+				reason = "the values of the function are too large"
+			default:
 				panic(v)
 			}
-			reason = s.reason
 		}
 	}()
 	step()
@@ -189,6 +200,7 @@ func (z *Zeros) factor(r powerNode, d disc, opt ZeroOptions) error {
 	var gap *uncovered
 	var near float64
 	reason := run(func() {
+		d.placed()
 		if n, gap = fd.around(d.x, 0, d.r); gap != nil {
 			near = fd.zeroNear(gap)
 		}
@@ -225,7 +237,7 @@ func (z *finder) zeroNear(gap *uncovered) float64 {
 // list encloses the n zeros of the finder's function in the disc, each of multiplicity exp.
 func (z *Zeros) list(fd *finder, d disc, n, exp int) {
 	var all []found
-	reason := run(func() { all = fd.inDisc(d) })
+	reason := run(func() { d.placed(); all = fd.inDisc(d) })
 	total := 0
 	for _, s := range all {
 		total += s.n
@@ -375,6 +387,7 @@ func CountInBox(f Entire, box Box, opt ZeroOptions) (n int, err error) {
 	size := max(hi.x-lo.x, hi.y-lo.y)
 	z := newFinder(f.node(), disc{r: size}, opt)
 	reason := run(func() {
+		disc{x: math.Hypot(lo.x, lo.y), r: size}.placed()
 		c, gap := z.makeCell(lo, hi, size*0x1p-34)
 		switch near := 0.0; {
 		case gap == nil:

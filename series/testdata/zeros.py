@@ -27,11 +27,11 @@ def roots(coefs):
 
 def lambert(c, sign):
     """Zeros of s e^s = c, or with sign = -1 of -s e^(-s) = c."""
-    return [sign * mpmath.lambertw(c, k) for k in range(-40, 41)]
+    return [sign * mpmath.lambertw(c, k) for k in range(-8, 9)]
 
 
 def sinc():
-    return [mpmath.mpc((n * mpmath.pi) ** 2) for n in range(1, 40)]
+    return [mpmath.mpc((n * mpmath.pi) ** 2) for n in range(1, 12)]
 
 
 def airy():
@@ -39,7 +39,7 @@ def airy():
     y = lambda x: mpmath.hyp0f1(mpmath.mpf(2) / 3, x / 9)
     out, step = [], mpmath.mpf(1)
     x = mpmath.mpf(0)
-    while x > -2000:
+    while x > -250:
         if y(x) * y(x - step) < 0:
             t = mpmath.findroot(y, (x - step, x), solver="anderson", tol=1e-50)
             for k in range(3):
