@@ -97,6 +97,34 @@ func TestEnclosuresHoldExactValues(t *testing.T) {
 	})
 }
 
+// TestModels checks what a Taylor model claims, at exact points of its disc: the polynomial
+// with its errors holds the value, and on half the disc the derivative lies in its bound.
+func TestModels(t *testing.T) {
+	rapid.Check(t, func(r *rapid.T) {
+		f := drawFunction(r, 3)
+		ev := &evaluator{Arith: NewArith(rapid.SampledFrom([]int{53, 120}).Draw(r, "bits"))}
+		x := rat(rapid.Int64Range(-8, 8).Draw(r, "x"), 4)
+		rho := rapid.SampledFrom([]int{-8, -3, -1, 0, 1}).Draw(r, "log rho")
+		m := ev.at(f.node(), ev.rat(x), mag{0.5, rho + 1})
+		quarter := rat(1<<(rho+8), 4<<8)
+		for k := int64(-4); k <= 4; k++ {
+			at := new(big.Rat).Mul(quarter, rat(k, 1))
+			at.Add(at, x)
+			sum, tt := Disc{}, ev.rat(rat(k, 4))
+			for j := modelOrder - 1; j >= 0; j-- {
+				sum = ev.Add(ev.Mul(sum, tt), m.a[j])
+			}
+			if v, ok := f.Taylor(at, 2); !ok {
+				continue
+			} else if !meets(sum.enlarge(m.eps), v[0]) {
+				r.Errorf("%v at %v is %v, its model around %v has %v", f, at, v[0], x, sum.enlarge(m.eps))
+			} else if d := ev.derivative(m, mag{0.5, rho + 1}); k*k <= 4 && !meets(d, v[1]) {
+				r.Errorf("the derivative of %v at %v is %v, its bound around %v is %v", f, at, v[1], x, d)
+			}
+		}
+	})
+}
+
 // TestExactTaylor compares coefficients with those worked out by hand.
 func TestExactTaylor(t *testing.T) {
 	s := polynomial(0, 1)

@@ -56,6 +56,24 @@ func TestDiscArithmetic(t *testing.T) {
 	})
 }
 
+// TestDiscRounding: products and sums of exact points, where the radius is rounding alone.
+func TestDiscRounding(t *testing.T) {
+	a := NewArith(53)
+	rapid.Check(t, func(r *rapid.T) {
+		var x [4]float64
+		var q [4]*big.Rat
+		for i := range x {
+			x[i] = rapid.Float64Range(-2, 2).Draw(r, "part")
+			q[i] = new(big.Rat).SetFloat64(x[i])
+		}
+		u, v := a.Point(x[0], x[1]), a.Point(x[2], x[3])
+		mul := func(i, j int) *big.Rat { return new(big.Rat).Mul(q[i], q[j]) }
+		re, im := new(big.Rat).Sub(mul(0, 2), mul(1, 3)), new(big.Rat).Add(mul(0, 3), mul(1, 2))
+		contains(r, "product", a.Mul(u, v), re, im)
+		contains(r, "sum", a.Add(u, v), new(big.Rat).Add(q[0], q[2]), new(big.Rat).Add(q[1], q[3]))
+	})
+}
+
 // TestDiscFunctions checks identities, and values against those found with many more bits.
 func TestDiscFunctions(t *testing.T) {
 	one, zero := rat(1, 1), new(big.Rat)
