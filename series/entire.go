@@ -93,7 +93,7 @@ func (f Entire) Taylor(a *big.Rat, n int) ([]ExpSum, bool) {
 // number of bits. The error is a *GrowthError or a *budget.Stop.
 func (f Entire) Enclose(x, y, radius *big.Rat, bits int, b *budget.Budget) (d Disc, err error) {
 	defer catch(&err)
-	ev := &evaluator{NewArith(bits), b}
+	ev := &evaluator{Arith: NewArith(bits), budget: b}
 	c := ev.Rat(x, y)
 	rho := c.rad.add(magOfRat(radius)).add(mag{0.5, -4 * bits})
 	m := ev.at(f.node(), c.exactMid(), rho)
@@ -108,6 +108,8 @@ func catch(err *error) {
 		*err = v
 	case *GrowthError:
 		*err = v
+	case big.ErrNaN:
+		*err = errors.New("the values of the function are too large")
 	default:
 		panic(v)
 	}

@@ -24,7 +24,8 @@ type model struct {
 // evaluator makes models with one precision.
 type evaluator struct {
 	Arith
-	budget *budget.Budget
+	budget  *budget.Budget
+	shifted int // coefficients that the last shift of a polynomial took
 }
 
 // constant is the model of a number.
@@ -177,11 +178,45 @@ func (ev *evaluator) reciprocal(c Disc, rho mag) model {
 	return out
 }
 
-// polynomial is the model of Σ c[n] sⁿ; rest bounds what the terms left out add on the disc.
+// polynomial is the model of Σ coefs[n] sⁿ; rest bounds what the terms left out add on the
+// disc. As many coefficients at c are found as it takes to see how small those beyond the
+// model are; the bound by absolute values alone would be far too large where terms cancel.
 func (ev *evaluator) polynomial(coefs []Disc, rest mag, c Disc, rho mag) model {
-	out := ev.horner(coefs, ev.linear(c, ev.mag(rho)))
-	out.a[0] = out.a[0].enlarge(rest)
-	return out
+	n := max(modelOrder, ev.shifted/2)
+	for {
+		a, dropped := ev.shift(coefs, n, c, rho)
+		out := model{a[:modelOrder:modelOrder], dropped}
+		size := out.normFrom(0)
+		for _, d := range a[modelOrder:] {
+			out.eps = out.eps.add(d.norm())
+		}
+		if n >= len(coefs) || !size.mul(mag{0.5, -11}).less(dropped) {
+			ev.shifted = n
+			out.a[0] = out.a[0].enlarge(rest)
+			return out
+		}
+		n *= 2
+	}
+}
+
+// shift is the first n coefficients in t of Σ coefs[k] (c + ρt)ᵏ by Horner's rule, and a bound
+// of the sum of all others.
+func (ev *evaluator) shift(coefs []Disc, n int, c Disc, rho mag) (a []Disc, dropped mag) {
+	a = make([]Disc, n)
+	r := ev.mag(rho)
+	reach := c.midUp().add(rho)
+	for k := len(coefs) - 1; k >= 0; k-- {
+		ev.budget.Check(n)
+		top := min(len(coefs)-1-k, n-1) // a[top] is the last that can differ from 0
+		if top == n-1 {
+			dropped = dropped.mul(reach).add(a[n-1].norm().mul(rho))
+		}
+		for j := top; j >= 1; j-- {
+			a[j] = ev.Add(ev.Mul(a[j], c), ev.Mul(a[j-1], r))
+		}
+		a[0] = ev.Add(ev.Mul(a[0], c), coefs[k])
+	}
+	return a, dropped
 }
 
 // exponential is the model of eˢ.

@@ -138,7 +138,7 @@ func newFinder(f node, d disc, opt ZeroOptions) *finder {
 	if n == 0 {
 		n = 40000
 	}
-	return &finder{f, &evaluator{NewArith(narrowBits), opt.Budget}, n, d.r}
+	return &finder{f, &evaluator{Arith: NewArith(narrowBits), budget: opt.Budget}, n, d.r}
 }
 
 // run calls step and says why it got stuck, if it did.
@@ -303,7 +303,7 @@ func (z *Zeros) finish(f Entire, opt ZeroOptions) {
 	z.join()
 	for i := range z.List {
 		if s := &z.List[i]; s.Real && s.Multiplicity == 1 {
-			s.Slope = slope(f, *s, opt)
+			run(func() { s.Slope = slope(f, *s, opt) }) // 0 where values are too large
 		}
 	}
 }
@@ -349,7 +349,7 @@ func (s Zero) overlaps(t Zero) bool {
 // slope is the sign of f' on the enclosure of a real zero, 0 if it is not decided.
 func slope(f Entire, s Zero, opt ZeroOptions) int {
 	for bits := narrowBits; bits <= maxBits; bits *= 2 {
-		ev := &evaluator{NewArith(bits), opt.Budget}
+		ev := &evaluator{Arith: NewArith(bits), budget: opt.Budget}
 		c := ev.rat(s.Re)
 		r := c.rad.add(magOfRat(s.Radius)).add(c.midUp().mul(mag{0.5, -bits / 2})).add(mag{0.5, -bits})
 		rho := r.mul(mag{0.5, 2})
