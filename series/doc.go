@@ -10,5 +10,9 @@
 // roots, elementary functions and the derivation all state the order that they can vouch
 // for. Coefficients are exact.
 //
+// Entire functions of one variable with rational data are a second kind of value (Entire,
+// Fraction): they are expanded exactly, enclosed rigorously, and their zeros in a disc are
+// counted with proof (ZerosInDisc, CompareTruncation).
+//
 // The relations of the field must not change during the life of a Grading and its series.
 package series

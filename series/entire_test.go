@@ -268,3 +268,30 @@ func TestGrowth(t *testing.T) {
 		t.Error("a bound that does not fall is accepted")
 	}
 }
+
+// TestRuleModels: the exponential by its Taylor rule against its exact values, where terms
+// cancel and where they do not.
+func TestRuleModels(t *testing.T) {
+	f := rule(t, "e", func(n int) *big.Rat {
+		return new(big.Rat).SetFrac(big.NewInt(1), new(big.Int).MulRange(1, int64(n)))
+	}, Growth{rat(1, 1), rat(1, 1), 1, 1})
+	for _, bits := range []int{53, 100} {
+		for _, x := range []int64{-30, -12, -1, 0, 2, 25} {
+			for _, rho := range []mag{{0.5, -6}, {0.5, 0}, {0.5, 2}} {
+				ev := &evaluator{Arith: NewArith(bits)}
+				m := ev.at(f.node(), ev.rat(rat(x, 1)), rho)
+				for k := int64(-2); k <= 2; k++ {
+					r, _ := rho.exact().Rat(nil)
+					at := r.Mul(r, rat(k, 2)).Add(r, rat(x, 1))
+					sum := Disc{}
+					for j := modelOrder - 1; j >= 0; j-- {
+						sum = ev.Add(ev.Mul(sum, ev.rat(rat(k, 2))), m.a[j])
+					}
+					if v := expPower(at, rat(1, 1)); !meets(sum.enlarge(m.eps), v) {
+						t.Errorf("%d bits: the model around %d with ρ = %v has %v at %v, not %v", bits, x, rho, sum.enlarge(m.eps), at, v)
+					}
+				}
+			}
+		}
+	}
+}

@@ -2,6 +2,7 @@ package series
 
 import (
 	"bytes"
+	"context"
 	"encoding/json"
 	"errors"
 	"fmt"
@@ -11,6 +12,7 @@ import (
 
 	"pgregory.net/rapid"
 
+	"remnant/expr/budget"
 	"remnant/expr/outside"
 )
 
@@ -354,6 +356,19 @@ func TestNotProven(t *testing.T) {
 	must(t, err)
 	if !z.Proven || z.Listed || z.Reason == "" || z.Count != 7 {
 		t.Errorf("500 models prove %+v", z)
+	}
+}
+
+// TestInterrupted: a cancelled run ends in a *budget.Stop.
+func TestInterrupted(t *testing.T) {
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	opt := ZeroOptions{Budget: budget.New(ctx, 0)}
+	for _, f := range []Entire{lambert(rat(2, 1)), sinc(t), polynomial(-2, 0, 1)} {
+		_, err := ZerosInDisc(f, new(big.Rat), rat(50, 1), opt)
+		if stop := (*budget.Stop)(nil); !errors.As(err, &stop) {
+			t.Errorf("%v: %v", f, err)
+		}
 	}
 }
 
