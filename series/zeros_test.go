@@ -38,7 +38,7 @@ func sinc(t testing.TB) Entire {
 	}, Growth{rat(1, 1), rat(1, 4), 2, 1})
 }
 
-// airy solves y” = s·y with y(0) = 1, y'(0) = 0.
+// airy solves d²y/ds² = s·y with y = 1, dy/ds = 0 at 0.
 func airy(t testing.TB) Entire {
 	return rule(t, "airy", func(n int) *big.Rat {
 		c := rat(1, 1)
