@@ -18,6 +18,7 @@ package reduce
 import (
 	"errors"
 	"fmt"
+	"math/big"
 
 	"remnant/expr/field"
 	"remnant/expr/poly"
@@ -32,12 +33,12 @@ type Count struct {
 // maxUnlucky bounds the random backgrounds that are tried.
 const maxUnlucky = 64
 
-// CountSolutions counts the solutions of 𝒟Φ = 0 modulo the prime 2⁶¹ − 1. The count is
+// CountSolutions counts the solutions of 𝒟Φ = 0 modulo a prime of 61 bits. The count is
 // certain up to a probability of order 10⁻¹⁵.
 func (s System) CountSolutions() (Count, error) {
 	for seed := uint64(1); seed <= maxUnlucky; seed++ {
 		s.K.Budget().Check(0)
-		bg := s.K.RandomBackground(poly.Mersenne61, seed)
+		bg := s.K.RandomBackground(primeFor(seed), seed)
 		c, err := s.countAlong(bg)
 		if errors.Is(err, field.ErrUnlucky) {
 			continue
@@ -45,6 +46,19 @@ func (s System) CountSolutions() (Count, error) {
 		return c, err
 	}
 	return Count{}, fmt.Errorf("no regular random background was found in %d tries", maxUnlucky)
+}
+
+// primeFor is the prime of the n-th try: 2⁶¹ − 1 first, then others, since a constant such as 3
+// may have no root modulo the first.
+func primeFor(n uint64) poly.Modulus {
+	if n == 1 {
+		return poly.Mersenne61
+	}
+	for p := uint64(1)<<60 + n<<40 + 1; ; p += 2 {
+		if new(big.Int).SetUint64(p).ProbablyPrime(0) { // exact below 2⁶⁴
+			return poly.Modulus(p)
+		}
+	}
 }
 
 func (s System) countAlong(bg *field.Background) (Count, error) {

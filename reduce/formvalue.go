@@ -89,6 +89,9 @@ func (r *Result) rational(e field.Elem, what string) (*big.Rat, error) {
 		return x, nil
 	}
 	for _, g := range v.Gens() {
+		if in := k.Info(g); in.Kind == field.Function {
+			return nil, r.refusePoles(fmt.Sprintf("a number is missing for '%s', which stands in %s", in.Name, what), fmt.Sprintf("a constant value of a function of time is given as the initial one: numbers %s(0) = 1", in.Name))
+		}
 		return nil, r.refusePoles(fmt.Sprintf("a number is missing for '%s', which stands in %s", k.Info(g).Name, what), "rational values are given so: numbers M = 1")
 	}
 	return nil, r.refusePoles(what+" is no rational number", "rational values are given so: numbers M = 1")

@@ -3,7 +3,8 @@ package reduce
 // The poles of the propagator of an action with a form factor: the zeros of W(s) in a disc.
 // The action of the mode is ½∫√−ḡ Y𝒪(□̄)Y with 𝒪 = −W/(wF). A real simple zero s₀ is healthy if
 // 𝒪′(s₀) = −W′(s₀)/(wF(s₀)) > 0 and a ghost if it is negative; on Minkowski space it is a tachyon
-// if s₀ < 0.
+// if s₀ < 0; on de Sitter space s₀ is the mass squared in (□ − s₀)u = 0, and a mode with s₀ < 0
+// grows.
 
 import (
 	"math/big"
@@ -19,6 +20,7 @@ const (
 	Healthy      PoleVerdict = "healthy"
 	GhostPole    PoleVerdict = "ghost"
 	Tachyon      PoleVerdict = "tachyon"
+	Growing      PoleVerdict = "growing" // on de Sitter space: its mass squared s₀ is negative
 	ComplexPair  PoleVerdict = "complex pair"
 	MultiplePole PoleVerdict = "multiple"
 	Undecided    PoleVerdict = "undecided" // a cluster, or a sign that could not be proved
@@ -139,8 +141,12 @@ func (r *Result) judge(z series.Zero, form series.Entire, weight *big.Rat) ([]Po
 			out[0] = GhostPole
 		}
 	}
-	if r.onMinkowski() && new(big.Rat).Add(z.Re, z.Radius).Sign() < 0 {
-		out = append(out, Tachyon)
+	if new(big.Rat).Add(z.Re, z.Radius).Sign() < 0 {
+		if r.onMinkowski() {
+			out = append(out, Tachyon)
+		} else {
+			out = append(out, Growing)
+		}
 	}
 	return out, nil
 }

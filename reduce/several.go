@@ -4,6 +4,8 @@ package reduce
 // speeds as the roots of det(𝒢a²/N̄² − c²𝒦) = 0.
 
 import (
+	"math/big"
+
 	"remnant/expr/field"
 	"remnant/expr/oper"
 	"remnant/parse"
@@ -17,6 +19,13 @@ type Several struct {
 	// without common factors. It is nil where the system has not the form of second order with
 	// a regular kinetic matrix free of k and q₀ linear in k².
 	SoundSpeeds []field.Elem
+
+	// GradientMinors are those of the gradient matrix a²𝒢/N̄²: with a positive kinetic matrix, all
+	// are positive exactly where every sound speed squared is.
+	GradientMinors []field.Elem
+
+	// Roots are the sound speeds squared where two fields have them without a root.
+	Roots []field.Elem
 
 	// Minors are the leading principal minors of the kinetic matrix q₁: all are positive
 	// exactly where there is no ghost. Nil where SoundSpeeds is.
@@ -54,14 +63,59 @@ func (s *Several) soundSpeeds(m *parse.Model, kin, q0 [][]field.Elem) {
 	if oper.Det(m.K, kin).IsZero() {
 		return
 	}
-	for i := 1; i <= n; i++ {
-		minor := make([][]field.Elem, i)
-		for a := range i {
-			minor[a] = kin[a][:i]
-		}
-		s.Minors = append(s.Minors, oper.Det(m.K, minor).Lowest())
-	}
+	s.Minors, s.GradientMinors = leadingMinors(m.K, kin), leadingMinors(m.K, grad)
 	s.SoundSpeeds = monicPencil(m.K, grad, kin)
+	s.Roots = rationalRoots(s.SoundSpeeds)
+}
+
+// leadingMinors are the determinants of the leading square blocks.
+func leadingMinors(k *field.Field, a [][]field.Elem) []field.Elem {
+	var out []field.Elem
+	for i := 1; i <= len(a); i++ {
+		block := make([][]field.Elem, i)
+		for r := range i {
+			block[r] = a[r][:i]
+		}
+		out = append(out, oper.Det(k, block).Lowest())
+	}
+	return out
+}
+
+// rationalRoots solves x² + c₁x + c₀ = 0 where the discriminant is a square; nil elsewhere.
+func rationalRoots(c []field.Elem) []field.Elem {
+	if len(c) != 3 {
+		return nil
+	}
+	middle := c[1].Scale(-1, 2)
+	quarter := middle.Mul(middle).Sub(c[0]) // a quarter of the discriminant
+	root, ok := squareRoot(quarter)
+	if !ok {
+		return nil
+	}
+	return []field.Elem{middle.Add(root).Lowest(), middle.Sub(root).Lowest()}
+}
+
+// squareRoot is a root of e that needs none to be written; false if there is no such.
+func squareRoot(e field.Elem) (field.Elem, bool) {
+	if e.IsZero() {
+		return e, true
+	}
+	k := e.Field()
+	r, factors := e.Factors()
+	num, den := new(big.Int).Sqrt(new(big.Int).Abs(r.Num())), new(big.Int).Sqrt(r.Denom())
+	root := new(big.Rat).SetFrac(num, den)
+	if new(big.Rat).Mul(root, root).Cmp(r) != 0 {
+		return e, false
+	}
+	out := k.Rat(root)
+	for _, f := range factors {
+		q, err := k.Poly(f.P)
+		if err != nil || f.Exp%2 != 0 {
+			return e, false
+		}
+		out = out.Mul(q.Pow(f.Exp / 2))
+	}
+	return out, true
 }
 
 // monicPencil gives the coefficients of det(g − x·k)/det(−k) by powers of x: the

@@ -44,6 +44,9 @@ type Statement struct {
 // positivity decides e > 0 from declared signs, or gives the product of the factors that it
 // depends on.
 func positivity(e field.Elem) (Verdict, field.Elem) {
+	if e.IsZero() {
+		return Never, field.Elem{}
+	}
 	switch e.Sign() {
 	case field.Positive:
 		return Always, field.Elem{}
@@ -134,22 +137,42 @@ func (s *Several) stability(weights []int) []Statement {
 	if len(s.Minors) == 0 {
 		return out
 	}
-	ghost := Statement{Concern: Ghost, AtFinite: true}
-	for _, minor := range s.Minors {
-		switch v, cond := positivity(minor); v {
-		case Never:
-			ghost.Verdict = Never
-		case While:
-			ghost.Minors = append(ghost.Minors, cond)
-			if ghost.Verdict == Always {
-				ghost.Verdict = While
-			}
-		}
-	}
+	ghost := allPositive(Statement{Concern: Ghost, AtFinite: true}, s.Minors)
 	out = append(out, ghost)
+	switch {
+	case vanishes(s.GradientMinors):
+	case s.Roots != nil:
+		out = append(out, allPositive(Statement{Concern: GradientSign}, s.Roots))
+	case ghost.Verdict != Never: // only then do the signs of the gradient matrix decide
+		out = append(out, allPositive(Statement{Concern: GradientSign}, s.GradientMinors))
+	}
 	det := s.Minors[len(s.Minors)-1]
 	for _, q := range det.Vanishable() {
 		out = append(out, Statement{Concern: StrongCoupling, Verdict: While, Condition: q, AtFinite: true})
 	}
 	return out
+}
+
+// allPositive completes a statement that holds where all minors are positive.
+func allPositive(s Statement, minors []field.Elem) Statement {
+	for _, minor := range minors {
+		switch v, cond := positivity(minor); v {
+		case Never:
+			s.Verdict, s.Minors = Never, nil
+			return s
+		case While:
+			s.Minors = append(s.Minors, cond)
+			s.Verdict = While
+		}
+	}
+	return s
+}
+
+func vanishes(es []field.Elem) bool {
+	for _, e := range es {
+		if !e.IsZero() {
+			return false
+		}
+	}
+	return true
 }

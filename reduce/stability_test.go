@@ -62,3 +62,43 @@ func TestGhostsOfSeveralFields(t *testing.T) {
 		t.Errorf("condition %v > 0, want 1 − b²", g.Minors[0])
 	}
 }
+
+// A kinetic matrix with a vanishing leading minor is indefinite, hence a ghost; both fields of
+// the second model run away at large k; the third has the speeds 2 and 3.
+func TestGradientsOfSeveralFields(t *testing.T) {
+	tests := []struct {
+		lagrangian      string
+		ghost, gradient Verdict
+		roots           []string
+	}{
+		{"x'*y' - x,i*y,i", Never, Always, []string{"a^2", "a^2"}},
+		{"a^3*(x'^2 + y'^2)/2 + a*(x,i*x,i + y,i*y,i)/2", Always, Never, []string{"-1", "-1"}},
+		{"x'^2 + y'^2 - (2*x,i*x,i + 3*y,i*y,i)/a^2", Always, Always, []string{"3", "2"}},
+	}
+	for _, tc := range tests {
+		m := model(t, "case.act", "background a\nfields x, y\nlagrangian quadratic = "+tc.lagrangian+"\n")
+		r := mustReduce(t, m)
+		verdicts := map[Concern]Verdict{}
+		for _, s := range r.Stability {
+			verdicts[s.Concern] = s.Verdict
+		}
+		if verdicts[Ghost] != tc.ghost || verdicts[GradientSign] != tc.gradient {
+			t.Errorf("%s: %+v, want ghost %d and gradient %d", tc.lagrangian, r.Stability, tc.ghost, tc.gradient)
+		}
+		for i, want := range tc.roots {
+			if i >= len(r.Several.Roots) || !r.Several.Roots[i].Equal(eval(t, m, want)) {
+				t.Errorf("%s: sound speeds squared %v, want %v", tc.lagrangian, r.Several.Roots, tc.roots)
+			}
+		}
+	}
+}
+
+// Constants under a root may have none modulo one prime; others are tried.
+func TestCountWithRoots(t *testing.T) {
+	for _, n := range []string{"2", "3", "5", "6", "7", "10", "3*a", "21"} {
+		r := mustReduce(t, model(t, "case.act", "background a\nfields x\nlagrangian quadratic = a^3*x'^2*sqrt("+n+") - sqrt(3)*a*x,i*x,i\n"))
+		if r.DegreesOfFreedom != 1 {
+			t.Errorf("√%s: %d degrees of freedom, want 1", n, r.DegreesOfFreedom)
+		}
+	}
+}

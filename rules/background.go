@@ -121,20 +121,24 @@ func (x *expansion) orient(e field.Elem, number int, eqs []Equation, last bool) 
 	if x.m.ADM != nil {
 		rank = func(g field.Gen) []int { return x.admRank(g, eqs) }
 	}
-	var best field.Gen
-	bestRank := []int(nil)
+	type candidate struct {
+		gen  field.Gen
+		rank []int
+	}
+	var all []candidate
 	for _, g := range e.Num().Vars() {
-		r := rank(g)
-		if r == nil || !k.CanLead(e, g) {
-			continue
-		}
-		r = slices.Insert(r, 2, -e.Num().CoeffsIn(g)[1].TotalDegree()) // of equals the simplest coefficient
-		if slices.Compare(r, bestRank) > 0 {
-			best, bestRank = g, r
+		if r := rank(g); r != nil && k.CanLead(e, g) {
+			// of equals the simplest coefficient
+			all = append(all, candidate{g, slices.Insert(r, 2, -e.Num().CoeffsIn(g)[1].TotalDegree())})
 		}
 	}
-	if bestRank != nil {
-		return best, k.RelateFor(e, best, number)
+	slices.SortFunc(all, func(a, b candidate) int { return slices.Compare(b.rank, a.rank) })
+	for _, c := range all {
+		err := k.RelateFor(e, c.gen, number)
+		var stuck *field.Unsolvable
+		if !errors.As(err, &stuck) {
+			return c.gen, err
+		}
 	}
 	if !last {
 		return 0, &field.Unsolvable{Rest: e}

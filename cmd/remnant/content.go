@@ -325,6 +325,13 @@ func severalRows(s *reduce.Several) []row {
 	if s.SoundSpeeds == nil {
 		return nil
 	}
+	if s.Roots != nil {
+		var speeds []phrase
+		for _, c := range s.Roots {
+			speeds = append(speeds, maths(show.Elem(c)))
+		}
+		return []row{{label: words("sound speeds²"), value: list(speeds)}}
+	}
 	var terms []show.Node
 	for i := len(s.SoundSpeeds) - 1; i >= 0; i-- {
 		power := show.Int(1)
@@ -353,7 +360,7 @@ func place(rows []row, s reduce.Statement, full bool) []row {
 // besides lists the rows that a statement may stand beside, the best first.
 var besides = map[reduce.Concern][]string{
 	reduce.Ghost:        {"kinetic"},
-	reduce.GradientSign: {"gradient", "sound speed²"},
+	reduce.GradientSign: {"gradient", "sound speed²", "sound speeds²", "sound speeds"},
 	reduce.MassSign:     {"mass"},
 	reduce.Growth:       {"sound speed²"},
 }

@@ -92,7 +92,7 @@ func (u *unproven) Error() string { return "not proven: " + u.reason }
 // polesPage is a table of the zeros with the verdict above it.
 func polesPage(r *reduce.Result, p *reduce.Poles) *page {
 	out := &page{title: titleOf(r.Model), head: []row{
-		{label: words("W(s)"), value: words(p.Function)},
+		{label: words("W(s)"), value: wOf(r)},
 		{label: words("disc"), value: words("|s| < " + p.Radius.RatString() + ", s the eigenvalue of □")},
 	}}
 	s := section{heading: words(polesVerdict(p))}
@@ -112,6 +112,12 @@ func polesPage(r *reduce.Result, p *reduce.Poles) *page {
 	return out
 }
 
+// wOf is W as a formula in F(s).
+func wOf(r *reduce.Result) phrase {
+	w, _ := r.FormFactor.W(r.Model.K)
+	return maths(show.Elem(w))
+}
+
 // polesVerdict says in a line how many poles there are.
 func polesVerdict(p *reduce.Poles) string {
 	switch n := p.Zeros.Count; {
@@ -127,6 +133,9 @@ func polesVerdict(p *reduce.Poles) string {
 }
 
 func zeroRows(p *reduce.Poles) block {
+	if len(p.List) == 0 && !p.Zeros.Proven {
+		return block{sentence: words("Whether W has zeros there is not known.")}
+	}
 	if len(p.List) == 0 {
 		return block{sentence: words("W has no zero there.")}
 	}

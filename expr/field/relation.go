@@ -96,7 +96,15 @@ func (f *Field) Rules() []Rule {
 	return out
 }
 
+// settle works relations in until none is left to do. If one cannot be, the field stays as it
+// was.
 func (f *Field) settle(queue []posted) (err error) {
+	undo := f.snapshot()
+	defer func() {
+		if err != nil {
+			undo()
+		}
+	}()
 	defer CatchCycle(&err)
 	for n := 0; len(queue) > 0; n++ {
 		if n == maxSettling {
@@ -111,6 +119,24 @@ func (f *Field) settle(queue []posted) (err error) {
 		queue = append(more, queue...)
 	}
 	return nil
+}
+
+// snapshot returns a function that brings relations and assumptions back to what they are now.
+func (f *Field) snapshot() (undo func()) {
+	rules := map[Gen]*rule{}
+	for g, gen := range f.gens {
+		if gen.rule != nil {
+			rules[Gen(g)] = gen.rule
+		}
+	}
+	assumptions := slices.Clone(f.assumptions)
+	return func() {
+		for g, gen := range f.gens {
+			gen.rule = rules[Gen(g)]
+		}
+		f.assumptions = assumptions
+		f.epoch++
+	}
 }
 
 // CatchCycle, deferred, turns the panic of a value that leads back to itself into *err. The
@@ -485,12 +511,14 @@ func (f *Field) RelateFor(e Elem, leader Gen, source int) error {
 // relations that stand: only the leader is replaced, and none of its derivatives. It fails
 // with *Unsolvable where e is not linear in the leader or the derivative does not follow.
 func (f *Field) RelateClosed(e Elem, leader Gen, source int) error {
+	undo := f.snapshot()
 	err := f.settle([]posted{{rest: e, leader: leader, hasLead: true, sources: []int{source}, closed: true}})
 	if err != nil {
 		return err
 	}
 	left := f.genDeriv(leader).Sub(f.value(leader).D())
 	if left, err = left.Normal(); err != nil || !left.IsZero() {
+		undo()
 		return &Unsolvable{Sources: []int{source}, Rest: left}
 	}
 	return nil

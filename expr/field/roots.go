@@ -52,6 +52,9 @@ func (f *Field) Sqrt(e Elem) (Elem, error) {
 	if rad.IsOne() {
 		return out, nil
 	}
+	if f.polySign(rad) == Negative {
+		return Elem{}, fmt.Errorf("the square root of a negative quantity is not real")
+	}
 	s, err := f.rootOf(rad)
 	if err != nil {
 		return Elem{}, err
