@@ -88,11 +88,13 @@ func (r *Result) rational(e field.Elem, what string) (*big.Rat, error) {
 	if x, ok := v.Rat(); ok {
 		return x, nil
 	}
-	for _, g := range v.Gens() {
-		if in := k.Info(g); in.Kind == field.Function {
-			return nil, r.refusePoles(fmt.Sprintf("a number is missing for '%s', which stands in %s", in.Name, what), fmt.Sprintf("a constant value of a function of time is given as the initial one: numbers %s(0) = 1", in.Name))
+	if gens := v.Gens(); len(gens) > 0 {
+		in := k.Info(gens[0])
+		hint := "rational values are given so: numbers M = 1"
+		if in.Kind == field.Function {
+			hint = fmt.Sprintf("a constant value of a function of time is given as the initial one: numbers %s(0) = 1", in.Name)
 		}
-		return nil, r.refusePoles(fmt.Sprintf("a number is missing for '%s', which stands in %s", k.Info(g).Name, what), "rational values are given so: numbers M = 1")
+		return nil, r.refusePoles(fmt.Sprintf("a number is missing for '%s', which stands in %s", in.Name, what), hint)
 	}
 	return nil, r.refusePoles(what+" is no rational number", "rational values are given so: numbers M = 1")
 }
