@@ -80,6 +80,8 @@ func (e *elaborator) tensorName(n *Name) Tensor {
 		return &TensorCurvature{node{n.At}, "R", ""}
 	case "X":
 		return &TensorKinetic{node{n.At}, e.theScalar(n)}
+	case "GB":
+		return e.gaussBonnet(n.At)
 	case "Ric", "Riem", "Weyl", "G":
 		panic(newFault(diag.IndexMismatch, n.At, fmt.Sprintf("'%s' stands without its indices", n.Text),
 			fmt.Sprintf("it takes %d: %s", tensorRank[n.Name], n.Name+"."+"abcd"[:tensorRank[n.Name]])))
@@ -102,6 +104,15 @@ func (e *elaborator) tensorName(n *Name) Tensor {
 	}
 	panic(newFault(diag.NoMeaning, n.At, fmt.Sprintf("'%s' is %s and has no meaning in a covariant Lagrangian", n.Text, kindNames[s.kind]),
 		"a scalar is built from R, Ric, Riem, Weyl, G, scalar fields, X and box"))
+}
+
+// gaussBonnet is Riem.abcd*Riem.abcd - 4*Ric.ab*Ric.ab + R^2.
+func (e *elaborator) gaussBonnet(at diag.Span) Tensor {
+	square := func(c int64, name, letters string) Tensor {
+		t := &TensorCurvature{node{at}, name, letters}
+		return &TensorProduct{node{at}, []Tensor{&TensorValue{node{at}, e.k.Int(c)}, t, t}}
+	}
+	return &TensorSum{node{at}, []Tensor{square(1, "Riem", "abcd"), square(-4, "Ric", "ab"), square(1, "R", "")}}
 }
 
 // refuseGeometry refuses the scale factor and the rate, which are parts of the metric.

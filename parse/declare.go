@@ -172,13 +172,15 @@ func (e *elaborator) argument(a *Argument, f *Function) field.Elem {
 		panic(newFault(diag.WrongArguments, a.Word.Span(), fmt.Sprintf("'%s' cannot be an argument of a function", a.Word.Text), "X(phi) is the only argument of this form"))
 	case name.Name == "R" && !declared:
 		return e.ricci(name.At)
+	case name.Name == "GB" && !declared:
+		return e.gaussBonnetBackground(name.At)
 	case name.Name == "t":
 		return e.k.Gen(e.time())
 	}
 	sym := e.lookup(name)
 	if sym.kind != symbolBackground && sym.kind != symbolConstant {
 		panic(newFault(diag.WrongArguments, name.At, fmt.Sprintf("'%s' is %s and cannot be an argument of a function", name.Text, kindNames[sym.kind]),
-			"functions depend on functions of time, X, R or t"))
+			"functions depend on functions of time, X, R, GB or t"))
 	}
 	return e.k.Gen(sym.gen)
 }
@@ -229,6 +231,17 @@ func (e *elaborator) ricci(at diag.Span) field.Elem {
 	h := a.D().Div(a)
 	sum := a.Dn(2).Div(a).Add(h.Pow(2)).Sub(h.Mul(n.D()).Div(n))
 	return sum.Scale(6, 1).Div(n.Pow(2))
+}
+
+// gaussBonnetBackground is the background value of the Gauss–Bonnet scalar: 24h²(h² + N̄⁻¹h′) with
+// the physical rate h = a'/(N̄a).
+func (e *elaborator) gaussBonnetBackground(at diag.Span) field.Elem {
+	a, n := e.model.A, e.model.Lapse
+	if a.IsOne() {
+		panic(newFault(diag.WrongArguments, at, "GB needs the scale factor", "declare a in 'background'"))
+	}
+	h := a.D().Div(a.Mul(n))
+	return h.Pow(2).Mul(h.Pow(2).Add(h.D().Div(n))).Scale(24, 1)
 }
 
 // time is the generator t, cosmic time: t' = N̄.

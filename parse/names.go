@@ -53,7 +53,7 @@ var reservedNames = append([]string{"k", "box", "pi", "t", "H"}, elementaryNames
 
 // formNames are reserved in a form of the Lagrangian beside those above.
 var formNames = map[string][]string{
-	"covariant": {"R", "Ric", "Riem", "Weyl", "G", "X"},
+	"covariant": {"R", "Ric", "Riem", "Weyl", "G", "GB", "X"},
 	"adm":       {"N", "K", "R3", "Vn", "acc"},
 }
 

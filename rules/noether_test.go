@@ -26,6 +26,7 @@ var lagrangians = map[string]string{
 	"quartic":           "functions P(phi, X), F(phi, X)\nbackground a, phi\nlagrangian covariant = P + F*R + F,X*(box[phi]^2 - phi;ab*phi;ab)\n",
 	"quintic":           "functions P(phi, X), F(phi, X)\nbackground a, phi\nlagrangian covariant = R/2 + P + F*G.ab*phi;ab - F,X/6*(box[phi]^3 - 3*box[phi]*phi;ab*phi;ab + 2*phi;ab*phi;bc*phi;ca)\n",
 	"Gauss–Bonnet":      "functions V(phi), f(phi)\nbackground a, phi\nlagrangian covariant = R/2 + X - V + f*(Riem.abcd*Riem.abcd - 4*Ric.ab*Ric.ab + R^2)\n",
+	"f(GB)":             "constants M > 0\nbackground a\nfunctions f(GB)\nlagrangian covariant = M^2*R/2 + f\n",
 	"f(R)":              "background a\nfunctions f(R)\nlagrangian covariant = f\n",
 	"curvature squared": "constants M > 0, b, c\nbackground a\nlagrangian covariant = M^2*R/2 + b*R^2 + c*Weyl.abcd*Weyl.abcd\n",
 	"two scalars":       "constants M > 0\nfunctions V(phi, chi), P(X(chi))\nbackground a, phi, chi\nlagrangian covariant = M^2*R/2 + X(phi) + P - V\n",
