@@ -4,33 +4,23 @@ import (
 	"context"
 	"errors"
 	"os"
-	"regexp"
 	"strings"
 	"testing"
 
 	"remnant/expr/budget"
 	"remnant/parse"
 	"remnant/parse/diag"
+	"remnant/parse/parsetest"
 )
 
 // The example in the comment of each kind is refused for that kind.
 func TestKindExamples(t *testing.T) {
-	text, err := os.ReadFile("refusal.go")
-	if err != nil {
-		t.Fatal(err)
-	}
-	example := regexp.MustCompile(`(?m)^\t// (\w+): .*\n(?:\t// .*\n)*\t//\n\t// Example:\n((?:\t//\t.*\n)+)\t\w+ diag\.Kind = "([^"]+)"`)
-	found := example.FindAllStringSubmatch(string(text), -1)
-	if len(found) != 2 {
-		t.Fatalf("%d examples found, want one for each of the 2 kinds", len(found))
-	}
-	for _, f := range found {
-		t.Run(f[1], func(t *testing.T) {
-			src := strings.ReplaceAll(f[2], "\t//\t", "")
-			_, err := Reduce(model(t, "example.act", src))
+	for _, x := range parsetest.KindExamples(t, "refusal.go", 2) {
+		t.Run(x.Name, func(t *testing.T) {
+			_, err := Reduce(model(t, "example.act", x.Text))
 			var list diag.List
-			if !errors.As(err, &list) || list[0].Kind != diag.Kind(f[3]) {
-				t.Errorf("%v, want a refusal %q", err, f[3])
+			if !errors.As(err, &list) || list[0].Kind != x.Kind {
+				t.Errorf("%v, want a refusal %q", err, x.Kind)
 			}
 		})
 	}

@@ -29,15 +29,6 @@ type NonLocal struct {
 	Weight field.Elem // w
 }
 
-// NoEigenfunction: a form factor acts on what is no eigenfunction of □ on the background.
-//
-// Example:
-//
-//	background a
-//	formfactor F(box)
-//	lagrangian covariant = R/2 + R*F(box)[R]
-const NoEigenfunction diag.Kind = "no eigenfunction of box"
-
 // formTerm is a term c·O₁F(□)O₂.
 type formTerm struct {
 	coef        field.Elem

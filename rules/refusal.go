@@ -36,8 +36,18 @@ const (
 	// NoLeader: a background equation that can be solved for nothing.
 	//
 	// Example:
-	//	background a, phi
-	//	gauge flat
-	//	lagrangian covariant = R/2 + X^2 - phi^2
+	//	constants M > 0, r > 0
+	//	formfactor F(box)
+	//	background a
+	//	given box[R] = r*R
+	//	lagrangian covariant = M^2*R/2 + R*F(box)[R]/2
 	NoLeader diag.Kind = "background equation has no leader"
+
+	// NoEigenfunction: a form factor acts on what is no eigenfunction of □ on the background.
+	//
+	// Example:
+	//	background a
+	//	formfactor F(box)
+	//	lagrangian covariant = R/2 + R*F(box)[R]
+	NoEigenfunction diag.Kind = "no eigenfunction of box"
 )
