@@ -66,6 +66,10 @@ func (e *elimination) run() error {
 			if keep >= 0 && half(weights) == 0 && e.onePivot(-1) {
 				continue // nothing propagates, the kept field no more than the others
 			}
+			if v, q, ok := e.now.velocityConstraint(keep); ok {
+				e.apply(e.now.redefine(v, q, make([]int, len(v)), e.rename))
+				continue
+			}
 			return nil
 		}
 		e.apply(e.now.redefine(v, q, weights, e.rename))

@@ -25,6 +25,7 @@ type findings struct {
 	check      *reduce.GaugeCheck
 	steps      bool // show the action after each step
 	full       bool // write out long expressions that follow from others
+	elided     bool // a long solution was left out
 }
 
 // Expressions that follow from others on the page are written out up to longExpression
@@ -124,7 +125,7 @@ func (f *findings) solved() *section {
 	for _, st := range f.Steps {
 		for _, sol := range st.Solutions {
 			number++
-			rows = append(rows, solutionRow(f.Model, st, sol, number))
+			rows = append(rows, f.solutionRow(st, sol, number))
 		}
 		if f.steps {
 			s.blocks = append(s.blocks, block{rows: rows}, f.actionBlock(st.After()))
@@ -137,9 +138,20 @@ func (f *findings) solved() *section {
 	return s
 }
 
-func solutionRow(m *parse.Model, st reduce.Step, sol reduce.Solution, number int) row {
-	n, sum := sol.TimesLaplacian(m.Wavenumber)
+// longSolution is the size, in terms, from which the solution of a constraint is left out of
+// the page.
+const longSolution = 150
+
+func (f *findings) solutionRow(st reduce.Step, sol reduce.Solution, number int) row {
+	n, sum := sol.TimesLaplacian(f.Model.Wavenumber)
 	r := row{number: number, label: maths(show.Spatial(sol.Name, 0, n)), value: compare(nil, equals, reduce.SumNode(sum))}
+	size := 0
+	for _, a := range sum {
+		size += a.Coef.Terms()
+	}
+	if size > longSolution && !f.full {
+		r.value, f.elided = words(fmt.Sprintf("an expression of %d terms, which --full writes out", size)), true
+	}
 	switch {
 	case st.Kind == reduce.Redefined:
 		r.note = words("redefines it, to expose a hidden constraint")
@@ -224,7 +236,7 @@ func (f *findings) remains() *section {
 	switch {
 	case len(names) == 0:
 		s.blocks = append(s.blocks, block{sentence: words("All fields are fixed by the constraints, and the action that is left is zero.")})
-	case f.Single != nil && f.Single.Kinetic != nil && f.long(f.Single.Q...):
+	case f.Single != nil && f.long(f.Single.Q...):
 		s.blocks = append(s.blocks, f.actionByCoefficients())
 	default:
 		s.blocks = append(s.blocks, f.actionBlock(f.Remaining))
@@ -235,7 +247,7 @@ func (f *findings) remains() *section {
 	if f.Single != nil {
 		rows, short := f.equations()
 		s.blocks = append(s.blocks, block{rows: rows})
-		if short || f.Single.Kinetic != nil && f.long(f.Single.Q...) {
+		if short || f.long(f.Single.Q...) || f.elided {
 			s.blocks = append(s.blocks, block{sentence: words("Long expressions are given by others on this page; --full writes them out.")})
 		}
 	}
@@ -258,6 +270,9 @@ func (f *findings) names() []row {
 // Fourier mode.
 func (f *findings) actionByCoefficients() block {
 	u := func(n int) show.Node { return show.Power(show.Symbol(f.Variable, n), 2) }
+	if f.Single.Kinetic == nil {
+		return f.actionByOrders()
+	}
 	slow := show.Product(show.Symbol("gradient", 0), wave(2))
 	if !f.Single.Mass.IsZero() {
 		slow = show.Sum(slow, show.Symbol("mass", 0))
@@ -265,6 +280,17 @@ func (f *findings) actionByCoefficients() block {
 	twice := show.Sum(show.Product(show.Symbol("kinetic", 0), u(1)), show.Neg(show.Product(slow, u(0))))
 	return block{display: show.Equation(show.Symbol("S", 0),
 		show.Integral(clockName(f.Model.Clock), show.Product(show.Rat(big.NewRat(1, 2)), show.Bracket(twice))))}
+}
+
+// actionByOrders is S = ∫ ½ [ Σ qₙ (u⁽ⁿ⁾)² ].
+func (f *findings) actionByOrders() block {
+	var terms []show.Node
+	for n := len(f.Single.Q) - 1; n >= 0; n-- {
+		terms = append(terms, show.Product(show.Symbol(fmt.Sprint("q", n), 0), show.Power(show.Symbol(f.Variable, n), 2)))
+	}
+	half := show.Rat(big.NewRat(1, 2))
+	return block{display: show.Equation(show.Symbol("S", 0),
+		show.Integral(clockName(f.Model.Clock), show.Product(half, show.Bracket(show.Sum(terms...)))))}
 }
 
 // quantities are the rows of what the action is made of, stability beside it.
@@ -433,7 +459,7 @@ func (f *findings) shortSpeed(rows []row) []row {
 // given by other expressions of the page.
 func (f *findings) equations() (rows []row, short bool) {
 	var motion phrase
-	if eom := f.Single.EquationOfMotion; eom == nil || f.Single.Kinetic != nil && f.long(eom...) {
+	if eom := f.Single.EquationOfMotion; eom == nil || f.long(eom...) {
 		motion, short = f.motionByCoefficients(), true
 	} else {
 		motion = f.motion()
